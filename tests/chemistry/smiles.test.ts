@@ -156,3 +156,10 @@ test('rejects nothing that both OpenSMILES and RDKit accept, over 3,000 mutation
   }
   expect(tooStrict).toEqual([]);
 });
+
+test('tells the number of a long chirality mark from the hydrogens behind it', () => {
+  expect(readSmiles('[C@TH1H](F)(Cl)Br').structure?.atoms[0]?.writtenHydrogens).toBe(1);
+  expect(readSmiles('[C@TH1](F)(Cl)(Br)I').structure?.atoms[0]?.writtenHydrogens).toBe(0);
+  // RDKit lets the number be left out; OpenSMILES does not.
+  expect(readSmiles('[C@THH](F)(Cl)Br').problem?.span).toEqual({ start: 0, end: 7 });
+});

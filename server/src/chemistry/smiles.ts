@@ -29,7 +29,6 @@ const ELEMENTS = new Set(
     'Rf Db Sg Bh Hs Mt Ds Rg Cn Nh Fl Mc Lv Ts Og'
   ).split(' '),
 );
-const AROMATIC_IN_BRACKETS = new Set(['b', 'c', 'n', 'o', 'p', 's', 'se', 'as', 'te', 'si']);
 const WITHOUT_BRACKETS = /Cl|Br|[BCNOPSFI]|[bcnops]/y;
 const BOND_SYMBOLS = '-=#$:/\\';
 const BRACKET_ATOM =
@@ -103,8 +102,7 @@ function readStrictly(text: string): Structure {
       rings.set(digit, { atom: previous, symbol: pending?.symbol, span });
     } else {
       rings.delete(digit);
-      const both = open.symbol && pending;
-      if (both && !sameRingBond(open.symbol, pending!.symbol)) {
+      if (open.symbol && pending && !sameRingBond(open.symbol, pending.symbol)) {
         throw new Unreadable('The two ends of this ring bond disagree.', span.start, span.end);
       }
       join(open.atom, previous, open.symbol ?? pending?.symbol, span);
@@ -170,8 +168,8 @@ function readStrictly(text: string): Structure {
 }
 
 /** A direction mark at both ends is judged later with the double bond, so any two marks agree here. */
-function sameRingBond(one: BondSymbol | undefined, other: BondSymbol): boolean {
-  const isDirection = (symbol: BondSymbol | undefined) => symbol === '/' || symbol === '\\';
+function sameRingBond(one: BondSymbol, other: BondSymbol): boolean {
+  const isDirection = (symbol: BondSymbol) => symbol === '/' || symbol === '\\';
   return one === other || (isDirection(one) && isDirection(other));
 }
 
@@ -208,7 +206,7 @@ function readBracket(text: string, at: number, index: number): Atom {
   if (!parts) throw new Unreadable('This bracket does not describe an atom.', span.start, span.end);
   const [, isotope, symbol, , hydrogens, charge, mapNumber] = parts;
   const { element, aromatic } = elementOf(symbol!);
-  if (!ELEMENTS.has(element) || (aromatic && !AROMATIC_IN_BRACKETS.has(symbol!))) {
+  if (!ELEMENTS.has(element)) {
     throw new Unreadable(`There is no element ${symbol}.`, span.start, span.end);
   }
   return {
