@@ -1,0 +1,159 @@
+/**
+ * The rows of the tables under `data/`, as the program holds them after the build has checked them.
+ *
+ * Knows: the shape of a row.  Must not know: where a row came from, structures, plans.
+ * Units: pKa dimensionless on the named scale; density g/mL at 25 °C; temperatures °C; energies kJ/mol.
+ * Invariants: every row names its sources and the basis on which its values stand; an empty cell is null, never 0.
+ */
+
+/** How a value got here: remembered from its source, compared with a second compilation, or worked out. */
+export type Basis = 'recalled' | 'checked' | 'derived';
+
+/** The scales on which acidities are written; water, DMSO and MeCN are measured scales, the others lean on them. */
+export type ScaleId = string;
+
+export interface Sourced {
+  /** Keys into the bibliography; `common-practice` marks a fact of the trade without a published source. */
+  readonly sources: readonly string[];
+  readonly basis: Basis;
+}
+
+export interface SolventRow extends Sourced {
+  readonly name: string;
+  readonly synonyms: readonly string[];
+  readonly smiles: string;
+  /** Canonical key of the structure, made at build. */
+  readonly key: string;
+  /** water, alcohol, acid, amide, sulfoxide, nitrile, ether, ketone, ester, carbonate, halogenated, aromatic, alkane, amine, nitro, phosphoramide, urea, other */
+  readonly kind: string;
+  readonly density: number | null;
+  readonly boilingPoint: number | null;
+  readonly meltingPoint: number | null;
+  readonly permittivity: number | null;
+  /** Autoprotolysis constant on the solvent's own scale. */
+  readonly pKs: number | null;
+  /** pKa of the protonated solvent and of the solvent itself, on `scale`, molar-concentration convention. */
+  readonly lyoniumPKa: number | null;
+  readonly lyatePKa: number | null;
+  readonly ownCoupleSd: number | null;
+  /** Gibbs energy of transfer of the proton from water, kJ/mol. */
+  readonly protonTransferEnergy: number | null;
+  readonly transferSd: number | null;
+  readonly waterMiscibility: 'yes' | 'partly' | 'no';
+  /** The scale on which acidities in this solvent are looked up and what borrowing it costs. */
+  readonly scale: ScaleId;
+  readonly scaleSd: number;
+  /** Ionic species separate poorly or well: decides whether ion pairs are judged. */
+  readonly protic: boolean;
+  readonly heatCapacity: number | null;
+}
+
+/** What a reagent does in a flask; one name can have several. */
+export type ReagentRole =
+  | 'metal-hydride'
+  | 'metal-amide'
+  | 'organometallic'
+  | 'borohydride'
+  | 'aluminium-hydride'
+  | 'solid-base'
+  | 'amine-base'
+  | 'alkoxide'
+  | 'hydroxide'
+  | 'carbonate'
+  | 'mineral-acid'
+  | 'organic-acid'
+  | 'lewis-acid'
+  | 'coupling-agent'
+  | 'acylating'
+  | 'alkylating'
+  | 'sulfonylating'
+  | 'silylating'
+  | 'halogenating'
+  | 'oxidant'
+  | 'reductant'
+  | 'catalyst'
+  | 'ligand'
+  | 'gas'
+  | 'salt'
+  | 'drying-agent'
+  | 'additive'
+  | 'electrophile'
+  | 'nucleophile'
+  | 'dehydrating'
+  | 'protecting'
+  | 'fluoride'
+  | 'cyanide'
+  | 'azide'
+  | 'quench';
+
+export interface ReagentRow extends Sourced {
+  readonly name: string;
+  readonly synonyms: readonly string[];
+  /** Null only for substances without one structure (silica, Pd/C, Celite). */
+  readonly smiles: string | null;
+  readonly key: string | null;
+  readonly roles: readonly ReagentRole[];
+  /** g/mol where the structure does not give it (hydrates, polymers, supported catalysts). */
+  readonly molarMass: number | null;
+  readonly density: number | null;
+  /** Usual strength, for an amount written by volume alone or with `sat.`: mol/L, mass share, and in what. */
+  readonly stockMolarity: number | null;
+  readonly stockMassShare: number | null;
+  readonly stockSolvent: string | null;
+  readonly saturatedMolarity: number | null;
+  /** Protons that one mol takes up (bases) or gives (acids) in practice. */
+  readonly protonCapacity: number | null;
+  /** Highest pKa on the DMSO scale that a solid base is held to reach in an aprotic solvent. */
+  readonly surfaceCeiling: number | null;
+  /** Acid that one mol releases when it does its job (coupling agents, acid chlorides), mol per mol. */
+  readonly acidReleased: number | null;
+  readonly note: string;
+}
+
+/** Two things that must not meet, or one thing that must not be made; a caution never claims that anything is safe. */
+export interface CautionRow extends Sourced {
+  readonly id: string;
+  /** toxic-gas, gas-release, runaway-pair, skin-carrier */
+  readonly check: string;
+  /** What triggers it: `reagent:NAME`, `role:ROLE`, `group:SMARTS`, `solvent:NAME`, `kind:SOLVENT-KIND`, joined with `|` for "or". */
+  readonly first: string;
+  readonly second: string | null;
+  /** The acid whose neutral form leaves as a gas, by SMILES, and how far below its pKa + margin the flask must be. */
+  readonly gas: string | null;
+  readonly gasPKa: number | null;
+  readonly gasMargin: number | null;
+  /** °C; above it the caution speaks. */
+  readonly aboveTemperature: number | null;
+  readonly hazard: string;
+  readonly advice: string;
+}
+
+/** How long a strong base lives in a solvent, between known points. */
+export interface LimitRow extends Sourced {
+  readonly reagent: string;
+  readonly solvent: string;
+  readonly temperature: number;
+  readonly halfLifeHours: number | null;
+  readonly what: string;
+}
+
+/** A protecting or sensitive group and where the trade holds it safe. */
+export interface StabilityRow extends Sourced {
+  readonly id: string;
+  readonly name: string;
+  readonly smarts: string;
+  readonly pattern: unknown;
+  readonly lowestPH: number | null;
+  readonly highestPH: number | null;
+  /** °C up to which the range above holds. */
+  readonly upTo: number | null;
+  /** Reagent roles or names that take it off. */
+  readonly attackedBy: readonly string[];
+  readonly note: string;
+}
+
+export interface SourceRow {
+  readonly id: string;
+  readonly title: string;
+  readonly text: string;
+}

@@ -1,0 +1,79 @@
+/**
+ * Builds everything that is generated: the tables' module, the bundles of command line, servers and extension.
+ *
+ * `node server/tools/build.mjs [tables]`; without a word it builds all.
+ */
+import { execFileSync } from 'node:child_process';
+import { existsSync, mkdirSync } from 'node:fs';
+import { dirname, join } from 'node:path';
+import { fileURLToPath } from 'node:url';
+import { build } from 'esbuild';
+
+const root = join(dirname(fileURLToPath(import.meta.url)), '../..');
+const at = (path) => join(root, path);
+const common = {
+  bundle: true,
+  minify: true,
+  sourcemap: false,
+  logLevel: 'warning',
+  absWorkingDir: root,
+  legalComments: 'none',
+};
+const node = { ...common, platform: 'node', target: 'node20', format: 'cjs' };
+const browser = { ...common, platform: 'browser', target: 'es2022' };
+
+async function tables() {
+  await build({
+    ...node,
+    minify: false,
+    packages: 'external',
+    format: 'esm',
+    entryPoints: ['server/tools/make-tables.ts'],
+    outfile: 'dist/tools/make-tables.mjs',
+  });
+  execFileSync(process.execPath, [at('dist/tools/make-tables.mjs'), root], { stdio: 'inherit' });
+}
+
+/** Bundles an entry only where it exists, so that a part of the tree can be built alone. */
+async function bundle(options) {
+  if (existsSync(at(options.entryPoints[0]))) await build(options);
+}
+
+mkdirSync(at('dist'), { recursive: true });
+await tables();
+if (process.argv[2] !== 'tables') {
+  await Promise.all([
+    bundle({
+      ...node,
+      entryPoints: ['server/src/cli/main.ts'],
+      outfile: 'dist/lyate.cjs',
+      banner: { js: '#!/usr/bin/env node' },
+    }),
+    bundle({ ...node, entryPoints: ['server/src/lsp/node.ts'], outfile: 'dist/server.cjs' }),
+    bundle({
+      ...browser,
+      format: 'iife',
+      entryPoints: ['server/src/lsp/browser.ts'],
+      outfile: 'dist/server-browser.js',
+    }),
+    bundle({
+      ...node,
+      entryPoints: ['client/src/extension.ts'],
+      outfile: 'dist/extension.cjs',
+      external: ['vscode'],
+    }),
+    bundle({
+      ...browser,
+      format: 'cjs',
+      entryPoints: ['client/src/extension-browser.ts'],
+      outfile: 'dist/extension-browser.cjs',
+      external: ['vscode'],
+    }),
+    bundle({
+      ...browser,
+      format: 'iife',
+      entryPoints: ['client/src/flask-view/page.ts'],
+      outfile: 'dist/flask-view.js',
+    }),
+  ]);
+}
