@@ -22,16 +22,17 @@ const common = {
 const node = { ...common, platform: 'node', target: 'node20', format: 'cjs' };
 const browser = { ...common, platform: 'browser', target: 'es2022' };
 
-async function tables() {
+/** Bundles one of the tools and runs it on the project. */
+async function run(tool) {
   await build({
     ...node,
     minify: false,
     packages: 'external',
     format: 'esm',
-    entryPoints: ['server/tools/make-tables.ts'],
-    outfile: 'dist/tools/make-tables.mjs',
+    entryPoints: [`server/tools/${tool}.ts`],
+    outfile: `dist/tools/${tool}.mjs`,
   });
-  execFileSync(process.execPath, [at('dist/tools/make-tables.mjs'), root], { stdio: 'inherit' });
+  execFileSync(process.execPath, [at(`dist/tools/${tool}.mjs`), root], { stdio: 'inherit' });
 }
 
 /** Bundles an entry only where it exists, so that a part of the tree can be built alone. */
@@ -40,7 +41,8 @@ async function bundle(options) {
 }
 
 mkdirSync(at('dist'), { recursive: true });
-await tables();
+await run('make-tables');
+await run('write-registry');
 if (process.argv[2] !== 'tables') {
   await Promise.all([
     bundle({
