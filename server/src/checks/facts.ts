@@ -1,0 +1,58 @@
+/**
+ * What a check is handed: one step with its flask at every line, its transfers judged, its conversions balanced.
+ *
+ * Knows: plans and flasks.  Must not know: checks, findings, the protocol.
+ * Invariants: everything here is a function of the step's resolved content, the state it goes on from, the tables and
+ * the settings; ranges are relative to the step's first line.
+ */
+import type { Conversion } from '../flask/convert.ts';
+import type { Contents, FlaskState, Ingredient, Verdict } from '../flask/state.ts';
+import type { ConvertStatement, Range, Statement, Step, Substance, TransferStatement } from '../route/plan.ts';
+import type { Tables } from '../tables/tables.ts';
+import type { Settings } from './settings.ts';
+
+/** Who put an ingredient into the flask. */
+export interface Addition {
+  readonly ingredient: Ingredient;
+  /** Null for what an earlier step left or a conversion made. */
+  readonly statement: Statement | null;
+  /** Where a finding about it points; the step's own line where it came from elsewhere. */
+  readonly range: Range;
+  readonly substance: Substance | null;
+}
+
+/** The flask right after one statement. */
+export interface Moment {
+  readonly statement: Statement;
+  readonly contents: Contents;
+  /** Solved on first asking. */
+  readonly state: () => FlaskState;
+}
+
+export interface TransferFact {
+  readonly statement: TransferStatement;
+  readonly contents: Contents;
+  /** One for each site the writer named, or one for the site that the flask takes. */
+  readonly verdicts: readonly Verdict[];
+  /** The conversion after it that uses up the anion, if any. */
+  readonly convert: ConvertStatement | null;
+}
+
+export interface ConvertFact {
+  readonly statement: ConvertStatement;
+  /** As charged, before the conversion takes place. */
+  readonly before: Contents;
+  readonly conversion: Conversion;
+}
+
+export interface StepFacts {
+  readonly step: Step;
+  readonly additions: readonly Addition[];
+  readonly moments: readonly Moment[];
+  readonly transfers: readonly TransferFact[];
+  readonly conversions: readonly ConvertFact[];
+  /** The flask that a later step may go on from. */
+  readonly left: Contents;
+  readonly tables: Tables;
+  readonly settings: Settings;
+}
