@@ -11,6 +11,8 @@ export interface Related {
   readonly range: Range;
   readonly message: string;
   readonly file?: string;
+  /** The range counts from the start of the file, not of the step: definitions outside any step. */
+  readonly absolute?: boolean;
 }
 
 export interface Finding {
