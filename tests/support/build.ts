@@ -2,7 +2,5 @@
 import { execFileSync } from 'node:child_process';
 
 export default function setup(): void {
-  execFileSync(process.execPath, ['server/tools/build.mjs', ...(process.env.LYATE_BUILT ? ['tables'] : [])], {
-    stdio: 'inherit',
-  });
+  execFileSync(process.execPath, ['server/tools/build.mjs', 'tables'], { stdio: 'inherit' });
 }

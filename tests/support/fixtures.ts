@@ -43,7 +43,12 @@ export function readFixtures(markdown: string): Fixture[] {
       continue;
     }
     if (line.startsWith('```')) {
-      fixtures.push({ title, plan: `${block.lines.join('\n')}\n`, sound: block.sound, markers: block.markers });
+      fixtures.push({
+        title,
+        plan: `${block.lines.join('\n')}\n`,
+        sound: block.sound,
+        markers: block.markers,
+      });
       block = null;
       continue;
     }
@@ -77,7 +82,10 @@ export function differences(fixture: Fixture, findings: readonly Finding[]): str
   for (const marker of fixture.markers) {
     const found = pool.find((finding) => !matched.has(finding) && matches(marker, finding));
     if (found) matched.add(found);
-    else missing.push(`missing  ${marker.line + 1}:${marker.start + 1}-${marker.end + 1} ${marker.severity} ${marker.check} "${marker.text}"`);
+    else
+      missing.push(
+        `missing  ${marker.line + 1}:${marker.start + 1}-${marker.end + 1} ${marker.severity} ${marker.check} "${marker.text}"`,
+      );
   }
   const extra = open
     .filter((finding) => !matched.has(finding))

@@ -1,0 +1,113 @@
+/**
+ * Facts about elements: numbers, masses, and the numbers of bonds that they form.
+ *
+ * Units: g/mol.
+ * Sources: standard atomic masses, IUPAC 2021 (abridged); valences of the OpenSMILES specification, and for charged
+ * atoms those of the element with as many electrons.
+ */
+
+const SYMBOLS = (
+  'H He Li Be B C N O F Ne Na Mg Al Si P S Cl Ar K Ca Sc Ti V Cr Mn Fe Co Ni Cu Zn Ga Ge As Se Br Kr ' +
+  'Rb Sr Y Zr Nb Mo Tc Ru Rh Pd Ag Cd In Sn Sb Te I Xe Cs Ba La Ce Pr Nd Pm Sm Eu Gd Tb Dy Ho Er Tm Yb Lu ' +
+  'Hf Ta W Re Os Ir Pt Au Hg Tl Pb Bi Po At Rn Fr Ra Ac Th Pa U Np Pu Am Cm Bk Cf Es Fm Md No Lr ' +
+  'Rf Db Sg Bh Hs Mt Ds Rg Cn Nh Fl Mc Lv Ts Og'
+).split(' ');
+
+const MASSES = (
+  '1.008 4.0026 6.94 9.0122 10.81 12.011 14.007 15.999 18.998 20.180 22.990 24.305 26.982 28.085 30.974 32.06 35.45 39.95 ' +
+  '39.098 40.078 44.956 47.867 50.942 51.996 54.938 55.845 58.933 58.693 63.546 65.38 69.723 72.630 74.922 78.971 79.904 83.798 ' +
+  '85.468 87.62 88.906 91.224 92.906 95.95 97 101.07 102.91 106.42 107.87 112.41 114.82 118.71 121.76 127.60 126.90 131.29 ' +
+  '132.91 137.33 138.91 140.12 140.91 144.24 145 150.36 151.96 157.25 158.93 162.50 164.93 167.26 168.93 173.05 174.97 ' +
+  '178.49 180.95 183.84 186.21 190.23 192.22 195.08 196.97 200.59 204.38 207.2 208.98 209 210 222 223 226 227 232.04 231.04 238.03'
+)
+  .split(' ')
+  .map(Number);
+
+const NUMBERS = new Map(SYMBOLS.map((symbol, index) => [symbol, index + 1]));
+
+/** Bonds that a neutral atom of the main groups forms, fewest first; elements left out form any number. */
+const VALENCES: Readonly<Record<string, readonly number[]>> = {
+  H: [1],
+  He: [0],
+  B: [3],
+  C: [4],
+  N: [3],
+  O: [2],
+  F: [1],
+  Ne: [0],
+  Al: [3],
+  Si: [4],
+  P: [3, 5, 7],
+  S: [2, 4, 6],
+  Cl: [1],
+  Ar: [0],
+  Ga: [3],
+  Ge: [4],
+  As: [3, 5, 7],
+  Se: [2, 4, 6],
+  Br: [1],
+  Kr: [0],
+  In: [3],
+  Sn: [2, 4],
+  Sb: [3, 5, 7],
+  Te: [2, 4, 6],
+  I: [1, 3, 5],
+  Xe: [0, 2, 4, 6],
+  Tl: [1, 3],
+  Pb: [2, 4],
+  Bi: [3, 5, 7],
+  At: [1, 3, 5],
+};
+
+/** Elements whose number of bonds does not change with their charge by the rule of equal electron counts. */
+const EARLY = new Set([
+  'H',
+  'B',
+  'C',
+  'N',
+  'O',
+  'F',
+  'Al',
+  'Si',
+  'P',
+  'S',
+  'Cl',
+  'Ga',
+  'Ge',
+  'As',
+  'Se',
+  'Br',
+  'Sn',
+  'Sb',
+  'Te',
+  'I',
+  'Bi',
+  'Pb',
+]);
+
+/** Atomic number; 0 for an unknown symbol. */
+export function numberOf(element: string): number {
+  return NUMBERS.get(element) ?? 0;
+}
+
+/** Symbol of an atomic number; empty where there is none. */
+export function symbolOf(number: number): string {
+  return SYMBOLS[number - 1] ?? '';
+}
+
+/** Average mass in g/mol; NaN for elements without a usual one. */
+export function massOf(element: string): number {
+  return MASSES[numberOf(element) - 1] ?? Number.NaN;
+}
+
+/**
+ * Numbers of bonds, hydrogens included, that an atom of this charge may have, fewest first.
+ *
+ * Null where any number goes. A charged atom is counted like the neutral element with as many electrons: N+ like C.
+ */
+export function valencesOf(element: string, charge: number): readonly number[] | null {
+  if (charge === 0) return VALENCES[element] ?? null;
+  if (!EARLY.has(element)) return null;
+  const other = symbolOf(numberOf(element) - charge);
+  return other === '' ? [0] : (VALENCES[other] ?? null);
+}
