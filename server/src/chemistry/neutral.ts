@@ -1,0 +1,341 @@
+/**
+ * The charge-blind reference form of a molecule: every charge that a proton can take away is taken away.
+ *
+ * Rules are written for this form, so that an acid, its salt and its organometallic are one molecule with one couple.
+ * Knows: graphs.  Must not know: rules, acidity.
+ * Invariants:
+ *  1. Atoms keep their indices; explicit hydrogens become counts and stay behind as lone atoms.   (tests/chemistry/neutral.test.ts)
+ *  2. `added` is the number of protons that the reference form has more than the drawing, atom by atom.
+ *  3. Bonds to the metals of groups 1 and 2 and to zinc are split; charges that no proton can mend stay.
+ */
+import { buildGraph } from './build-graph.ts';
+import type { Graph } from './graph.ts';
+import type { Atom, Bond, BondSymbol } from './molecule.ts';
+
+export interface NeutralForm {
+  readonly graph: Graph;
+  /** Protons added (+) or taken away (−) at each atom. */
+  readonly added: readonly number[];
+  /** Explicit hydrogens that became counts of their neighbours. */
+  readonly absorbed: ReadonlySet<number>;
+}
+
+const SPLIT = new Set(['Li', 'Na', 'K', 'Rb', 'Cs', 'Be', 'Mg', 'Ca', 'Sr', 'Ba', 'Zn']);
+/** Elements whose negative charge a proton takes away. */
+const PROTONATED = new Set(['C', 'N', 'O', 'S', 'Se', 'Te', 'P', 'As', 'F', 'Cl', 'Br', 'I', 'H', 'Si']);
+const HALOGENS = new Set(['F', 'Cl', 'Br', 'I']);
+const HYPERVALENT = new Set(['P', 'As', 'Si']);
+/** Elements whose positive charge leaves with a proton. */
+const ONIUM = new Set(['N', 'O', 'S', 'P', 'Se']);
+const SYMBOLS: readonly BondSymbol[] = ['-', '-', '=', '#', '$'];
+
+interface Draft {
+  readonly source: Graph;
+  readonly charges: number[];
+  readonly hydrogens: number[];
+  readonly orders: number[];
+  readonly added: number[];
+  readonly absorbed: Set<number>;
+  /** Rings whose double bonds have to be placed anew. */
+  replace: boolean;
+}
+
+/** The reference form of a graph; the graph itself where no other form can be built. */
+export function neutralForm(source: Graph): NeutralForm {
+  const draft: Draft = {
+    source,
+    charges: source.atoms.map(({ charge }) => charge),
+    hydrogens: source.atoms.map(({ hydrogens }) => hydrogens),
+    orders: source.bonds.map(({ order }) => order),
+    added: source.atoms.map(() => 0),
+    absorbed: new Set(),
+    replace: false,
+  };
+  absorbHydrogens(draft);
+  splitMetals(draft);
+  writeYlides(draft);
+  writeOxides(draft);
+  writeNitronates(draft);
+  writeEnolates(draft);
+  protonateAnions(draft, pairedAnions(draft));
+  spreadCarbocations(draft);
+  deprotonateCations(draft);
+  shiftCations(draft);
+  giveFreeProtons(draft);
+  const graph = rebuild(draft);
+  return graph === null
+    ? { graph: source, added: source.atoms.map(() => 0), absorbed: new Set() }
+    : { graph, added: draft.added, absorbed: draft.absorbed };
+}
+
+function neighboursOf({ source, orders }: Draft, atom: number): { other: number; bond: number }[] {
+  const { neighbours, bonds } = source.atoms[atom]!;
+  return neighbours
+    .map((other, place) => ({ other, bond: bonds[place]! }))
+    .filter(({ bond }) => orders[bond]! > 0);
+}
+
+function absorbHydrogens(draft: Draft): void {
+  for (const { index, number, charge, neighbours, bonds } of draft.source.atoms) {
+    if (number !== 1 || charge !== 0 || neighbours.length !== 1) continue;
+    const heavy = draft.source.atoms[neighbours[0]!]!;
+    if (heavy.number === 1 && (draft.absorbed.has(heavy.index) || heavy.neighbours.length !== 1)) continue;
+    if (SPLIT.has(heavy.element)) continue;
+    draft.orders[bonds[0]!] = 0;
+    draft.hydrogens[heavy.index]! += 1;
+    draft.absorbed.add(index);
+  }
+}
+
+function splitMetals(draft: Draft): void {
+  draft.source.bonds.forEach(({ from, to }, bond) => {
+    const [a, b] = [draft.source.atoms[from]!, draft.source.atoms[to]!];
+    const first = SPLIT.has(a.element);
+    if (draft.orders[bond] === 0 || first === SPLIT.has(b.element)) return;
+    const [metal, partner] = first ? [from, to] : [to, from];
+    const order = draft.orders[bond]!;
+    draft.charges[metal]! += order;
+    draft.charges[partner]! -= order;
+    draft.orders[bond] = 0;
+  });
+  for (const { element, index, hydrogens } of draft.source.atoms) {
+    // A metal hydride written as one atom, [LiH] or [NaH]: the hydrogens belong to the couple of dihydrogen.
+    if (!SPLIT.has(element) || hydrogens === 0) continue;
+    draft.charges[index]! += hydrogens;
+    draft.hydrogens[index] = 0;
+  }
+}
+
+/** C=P and C=S of ylides become the carbanion beside an onium centre. */
+function writeYlides(draft: Draft): void {
+  for (const { index, element, charge } of draft.source.atoms) {
+    if ((element !== 'P' && element !== 'S') || charge !== 0) continue;
+    const around = neighboursOf(draft, index);
+    const carbon = around.find(
+      ({ other, bond }) => draft.source.atoms[other]!.element === 'C' && draft.orders[bond] === 2,
+    );
+    if (carbon === undefined || draft.source.bonds[carbon.bond]!.aromatic) continue;
+    const carbons = around.filter(({ other }) => draft.source.atoms[other]!.element === 'C').length;
+    if (element === 'P' ? around.length !== 4 : carbons < 3) continue;
+    draft.orders[carbon.bond] = 1;
+    draft.charges[index] = 1;
+    draft.charges[carbon.other]! -= 1;
+  }
+}
+
+/** P+–O− and S+–O− (also N− and C−-free forms) become double bonds. */
+function writeOxides(draft: Draft): void {
+  for (const { index, element } of draft.source.atoms) {
+    if (element !== 'P' && element !== 'S' && element !== 'Cl' && element !== 'Br' && element !== 'I')
+      continue;
+    for (const { other, bond } of neighboursOf(draft, index)) {
+      if (draft.charges[index]! <= 0) break;
+      if (
+        draft.source.atoms[other]!.element !== 'O' ||
+        draft.charges[other] !== -1 ||
+        draft.orders[bond] !== 1
+      )
+        continue;
+      draft.orders[bond] = 2;
+      draft.charges[index]! -= 1;
+      draft.charges[other] = 0;
+    }
+  }
+}
+
+/** C=N+(O−)2 becomes the carbanion of the nitro compound. */
+function writeNitronates(draft: Draft): void {
+  for (const { index, element } of draft.source.atoms) {
+    if (element !== 'N' || draft.charges[index] !== 1) continue;
+    const around = neighboursOf(draft, index);
+    const oxides = around.filter(
+      ({ other }) => draft.source.atoms[other]!.element === 'O' && draft.charges[other] === -1,
+    );
+    const carbon = around.find(
+      ({ other, bond }) => draft.source.atoms[other]!.element === 'C' && draft.orders[bond] === 2,
+    );
+    if (oxides.length !== 2 || carbon === undefined) continue;
+    draft.orders[carbon.bond] = 1;
+    draft.charges[carbon.other]! -= 1;
+    draft.orders[oxides[0]!.bond] = 2;
+    draft.charges[oxides[0]!.other] = 0;
+  }
+}
+
+/** C=C–O− becomes the carbanion beside a carbonyl group: the proton of an enolate comes to rest on carbon. */
+function writeEnolates(draft: Draft): void {
+  for (const { index, element, aromatic } of draft.source.atoms) {
+    if (element !== 'O' || aromatic || draft.charges[index] !== -1) continue;
+    const around = neighboursOf(draft, index);
+    const carbon = around[0];
+    if (around.length !== 1 || carbon === undefined) continue;
+    const middle = draft.source.atoms[carbon.other]!;
+    if (middle.element !== 'C' || middle.aromatic) continue;
+    const alkene = neighboursOf(draft, carbon.other).find(
+      ({ other, bond }) =>
+        draft.orders[bond] === 2 && draft.source.atoms[other]!.element === 'C' && draft.charges[other] === 0,
+    );
+    if (alkene === undefined) continue;
+    draft.orders[carbon.bond] = 2;
+    draft.charges[index] = 0;
+    draft.orders[alkene.bond] = 1;
+    draft.charges[alkene.other] = -1;
+  }
+}
+
+/** Anions that belong to a neighbouring cation in the usual way of drawing: nitro, N-oxide, azide, diazo, isocyanide. */
+function pairedAnions(draft: Draft): Set<number> {
+  const paired = new Set<number>();
+  for (const { index, element } of draft.source.atoms) {
+    if (draft.charges[index] !== 1 || (element !== 'N' && element !== 'O') || draft.hydrogens[index] !== 0)
+      continue;
+    const around = neighboursOf(draft, index);
+    const unsaturated = around.some(({ bond }) => draft.orders[bond]! > 1);
+    const rank = (atom: number) => 'ONC'.indexOf(draft.source.atoms[atom]!.element);
+    const anions = around
+      .map(({ other }) => other)
+      .filter((other) => draft.charges[other] === -1 && !paired.has(other) && rank(other) !== -1)
+      .filter((other) => draft.source.atoms[other]!.element !== 'C' || isMultiple(other))
+      .sort((a, b) => rank(a) - rank(b) || a - b);
+    const anion = anions[0];
+    if (anion !== undefined && (unsaturated || draft.source.atoms[anion]!.element === 'O')) paired.add(anion);
+  }
+  return paired;
+
+  /** A carbanion counts as paired in C−≡N+ and C−–N+≡N, not beside a quaternary nitrogen. */
+  function isMultiple(atom: number): boolean {
+    return neighboursOf(draft, atom).some(
+      ({ other, bond }) => draft.charges[other] === 1 && (draft.orders[bond] === 3 || hasTriple(other)),
+    );
+  }
+
+  function hasTriple(atom: number): boolean {
+    return neighboursOf(draft, atom).some(({ bond }) => draft.orders[bond] === 3);
+  }
+}
+
+function protonateAnions(draft: Draft, paired: ReadonlySet<number>): void {
+  for (const { index, element } of draft.source.atoms) {
+    const charge = draft.charges[index]!;
+    if (0 <= charge || paired.has(index) || !PROTONATED.has(element)) continue;
+    const degree = neighboursOf(draft, index).length;
+    const hypervalent = (HALOGENS.has(element) && 0 < degree) || (HYPERVALENT.has(element) && 4 < degree);
+    if (hypervalent) continue;
+    draft.hydrogens[index]! -= charge;
+    draft.added[index]! -= charge;
+    draft.charges[index] = 0;
+  }
+}
+
+/** A carbocation beside an amine is an iminium ion. */
+function spreadCarbocations(draft: Draft): void {
+  for (const { index, element } of draft.source.atoms) {
+    if (element !== 'C' || draft.charges[index] !== 1) continue;
+    const amine = neighboursOf(draft, index)
+      .filter(
+        ({ other, bond }) =>
+          draft.source.atoms[other]!.element === 'N' &&
+          draft.charges[other] === 0 &&
+          draft.orders[bond] === 1,
+      )
+      .sort((a, b) => draft.hydrogens[b.other]! - draft.hydrogens[a.other]!)[0];
+    if (amine === undefined) continue;
+    draft.orders[amine.bond] = 2;
+    draft.charges[index] = 0;
+    draft.charges[amine.other] = 1;
+  }
+}
+
+function deprotonateCations(draft: Draft): void {
+  for (const { index, element } of draft.source.atoms) {
+    while (0 < draft.charges[index]! && 0 < draft.hydrogens[index]! && ONIUM.has(element)) {
+      draft.hydrogens[index]! -= 1;
+      draft.charges[index]! -= 1;
+      draft.added[index]! -= 1;
+    }
+  }
+}
+
+/** R2N+=C–NH and its aromatic like: the charge sits on one nitrogen, the proton that can leave on another. */
+function shiftCations(draft: Draft): void {
+  for (const { index, element, aromatic } of draft.source.atoms) {
+    if (element !== 'N' || draft.charges[index] !== 1 || draft.hydrogens[index] !== 0) continue;
+    if (aromatic) shiftInRing(draft, index);
+    else shiftAcrossCarbon(draft, index);
+  }
+}
+
+function shiftAcrossCarbon(draft: Draft, cation: number): void {
+  const double = neighboursOf(draft, cation).find(
+    ({ other, bond }) => draft.orders[bond] === 2 && draft.source.atoms[other]!.element === 'C',
+  );
+  if (double === undefined) return;
+  const amine = neighboursOf(draft, double.other).find(
+    ({ other, bond }) =>
+      other !== cation &&
+      draft.source.atoms[other]!.element === 'N' &&
+      draft.orders[bond] === 1 &&
+      draft.charges[other] === 0 &&
+      0 < draft.hydrogens[other]!,
+  );
+  if (amine === undefined) return;
+  draft.orders[double.bond] = 1;
+  draft.orders[amine.bond] = 2;
+  draft.charges[cation] = 0;
+  draft.hydrogens[amine.other]! -= 1;
+  draft.added[amine.other]! -= 1;
+}
+
+function shiftInRing(draft: Draft, cation: number): void {
+  const ring = draft.source.rings.find(
+    (atoms) =>
+      atoms.includes(cation) && atoms.length === 5 && atoms.some((atom) => isPyrroleLike(draft, atom)),
+  );
+  const donor = ring?.find((atom) => isPyrroleLike(draft, atom));
+  if (donor === undefined) return;
+  draft.charges[cation] = 0;
+  draft.hydrogens[donor]! -= 1;
+  draft.added[donor]! -= 1;
+  draft.replace = true;
+}
+
+function isPyrroleLike(draft: Draft, atom: number): boolean {
+  const { element, aromatic } = draft.source.atoms[atom]!;
+  return element === 'N' && aromatic && draft.charges[atom] === 0 && draft.hydrogens[atom] === 1;
+}
+
+/** [H+].[Cl-] is hydrogen chloride: a bare proton belongs to the first anion beside it. */
+function giveFreeProtons(draft: Draft): void {
+  for (const { index, number } of draft.source.atoms) {
+    if (number !== 1 || draft.charges[index] !== 1) continue;
+    const taker = draft.added.findIndex((count) => 0 < count);
+    if (taker === -1) continue;
+    draft.added[taker]! -= 1;
+    draft.charges[index] = 0;
+    draft.absorbed.add(index);
+  }
+}
+
+function rebuild(draft: Draft): Graph | null {
+  const { source, charges, hydrogens, orders, replace } = draft;
+  const aromatic = (atom: number) => replace && source.atoms[atom]!.aromatic;
+  const atoms = source.atoms.map(
+    ({ index, element, isotope, mapNumber, span }): Atom => ({
+      index,
+      element,
+      aromatic: aromatic(index),
+      isotope,
+      charge: charges[index]!,
+      writtenHydrogens: hydrogens[index]!,
+      mapNumber,
+      span,
+    }),
+  );
+  const bonds = source.bonds.flatMap(({ from, to, span, index, aromatic: flat }): Bond[] => {
+    const order = orders[index]!;
+    if (order === 0) return [];
+    const open = replace && flat && aromatic(from) && aromatic(to);
+    return [{ from, to, symbol: open ? undefined : SYMBOLS[order], span }];
+  });
+  return buildGraph({ atoms, bonds }).graph ?? null;
+}
