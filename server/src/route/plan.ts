@@ -6,6 +6,7 @@
  */
 import type { OwnValue } from '../chemistry/couple.ts';
 import type { ReagentRow, SolventRow } from '../tables/rows.ts';
+import type { RouteDocument } from './document.ts';
 
 export interface Position {
   readonly line: number;
@@ -26,15 +27,22 @@ export interface TextProblem {
   readonly related?: readonly { readonly range: Range; readonly message: string; readonly file?: string }[];
 }
 
-export interface Compound {
+/**
+ * What a compound is, without its place: a step that uses it stays the same when lines are inserted above the definition.
+ * Its place is that of the compound of the same name in `Plan.compounds`.
+ */
+export interface Definition {
   readonly name: string;
   readonly smiles: string;
   /** File it was defined in, as the host named it; the plan's own file where undefined. */
   readonly file: string | undefined;
+  readonly measured: readonly OwnValue[];
+}
+
+export interface Compound extends Definition {
   /** Absolute ranges in that file. */
   readonly nameRange: Range;
   readonly smilesRange: Range;
-  readonly measured: readonly OwnValue[];
 }
 
 /** What a name stands for. `unknown` still takes part as text. */
@@ -43,11 +51,11 @@ export interface Substance {
   /** As written. */
   readonly name: string;
   readonly smiles: string | null;
-  readonly compound: Compound | null;
+  readonly compound: Definition | null;
   readonly reagent: ReagentRow | null;
   readonly solvent: SolventRow | null;
   readonly range: Range;
-  /** Where the SMILES text of this substance starts, for `<…>` and compounds: maps atom spans to ranges. */
+  /** The SMILES text of `<…>` in the step itself, to map atom spans to ranges; null for all else. */
   readonly structureRange: Range | null;
 }
 
@@ -56,8 +64,9 @@ export interface Amount {
   readonly mol: number | null;
   /** Relative to the reference compound. */
   readonly equiv: number | null;
-  /** L of the liquid or solution as added. */
+  /** L of the liquid or solution as added, all portions together. */
   readonly volume: number | null;
+  /** g of the substance itself. */
   readonly mass: number | null;
   readonly portions: number;
   readonly qualifier: 'excess' | 'catalytic' | null;
@@ -90,6 +99,7 @@ export interface AddStatement extends Line {
 }
 export interface TemperatureStatement extends Line {
   readonly keyword: 'temperature';
+  /** K. */
   readonly from: number | 'reflux';
   readonly to: number | 'reflux';
 }
@@ -181,6 +191,8 @@ export interface Step {
   readonly statements: readonly Statement[];
   /** The charged compound that `equiv` refers to. */
   readonly reference: Substance | null;
+  /** mol of it; 0.001 where the step fixes none. */
+  readonly referenceMol: number;
   /** Problems of this step's own lines, relative. */
   readonly problems: readonly TextProblem[];
   /** Equal for two steps exactly when text, definitions used and relative lines are equal. */
@@ -197,4 +209,6 @@ export interface Plan {
   readonly problems: readonly TextProblem[];
   /** Files that `use` asks for and the host has not handed in yet. */
   readonly needs: readonly string[];
+  /** The lines as read, for what needs the text itself: tokens, formatting, names and their places. */
+  readonly document: RouteDocument;
 }
