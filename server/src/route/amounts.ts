@@ -50,12 +50,15 @@ export function readName(reader: LineReader, what: string, reserved: readonly st
   const first = reader.peek();
   if (first === undefined || (first.kind === 'word' && reserved.includes(first.text)))
     throw reader.missing(what);
-  const name = first.kind === 'word' ? readWords(reader, reserved) : readDelimited(reader, first);
+  const strength = first.kind === 'word' ? readStrength(reader, reserved) : null;
+  const next = reader.peek()!;
+  const name =
+    next.kind === 'word' ? readWords(reader, strength, reserved) : readDelimited(reader, next, strength);
   reader.names.push(name);
   return name;
 }
 
-function readDelimited(reader: LineReader, token: Token): NameNode {
+function readDelimited(reader: LineReader, token: Token, strength: Strength | null): NameNode {
   const isString = token.kind === 'string';
   reader.take(isString ? 'string' : 'structure');
   if (!token.closed) {
@@ -72,7 +75,7 @@ function readDelimited(reader: LineReader, token: Token): NameNode {
     text,
     inner,
     words: isString ? wordsOf(text, inner.start) : [],
-    strength: null,
+    strength,
     start,
     end,
   };
@@ -87,8 +90,7 @@ function wordsOf(text: string, offset: number): Word[] {
   }));
 }
 
-function readWords(reader: LineReader, reserved: readonly string[]): NameNode {
-  const strength = readStrength(reader, reserved);
+function readWords(reader: LineReader, strength: Strength | null, reserved: readonly string[]): NameNode {
   const words: Word[] = [];
   while (words.length === 0 || !nameEnds(reader, reserved)) {
     const { text, start, end } = reader.take('name');
@@ -129,8 +131,8 @@ function readStrength(reader: LineReader, reserved: readonly string[]): Strength
 }
 
 function nameFollows(reader: LineReader, ahead: number, reserved: readonly string[]): boolean {
-  const word = reader.word(ahead);
-  return word !== undefined && !endsName(reader, ahead, reserved);
+  const token = reader.peek(ahead);
+  return token !== undefined && (token.kind !== 'word' || !endsName(reader, ahead, reserved));
 }
 
 function nameEnds(reader: LineReader, reserved: readonly string[]): boolean {
@@ -144,7 +146,7 @@ function endsName(reader: LineReader, ahead: number, reserved: readonly string[]
   if (ratioOf(word) !== null) return true;
   const length = leadingNumber(word);
   if (length === 0) return false;
-  if (length < word.length) return isPortions(word) || dimensionOf(word.slice(length)) !== null;
+  if (length < word.length) return isPortions(word) || dimensionOf(withoutComma(word.slice(length))) !== null;
   // A bare number belongs to the name only where another number follows it, as in `Aliquat 336 5 g`.
   const next = reader.word(ahead + 1);
   return next === undefined || leadingNumber(next) === 0;
@@ -209,7 +211,11 @@ function readPortionsAndQuantity(
       reader.take('number');
       reader.take('operator');
     } else {
-      takeSplit(reader, first.text.length - 1, 'operator');
+      const cut = first.end - 1;
+      reader.takePieces([
+        { kind: 'number', start: first.start, end: cut },
+        { kind: 'operator', start: cut, end: first.end },
+      ]);
     }
     const whole = separate ? numberOf(first.text) : portions;
     if (!Number.isInteger(whole) || whole < 1 || 1000 < whole) {
@@ -220,15 +226,6 @@ function readPortionsAndQuantity(
   }
   const quantity = readQuantity(reader);
   return quantity === null ? null : { kind: 'quantity', quantity, portions };
-}
-
-/** Cuts the next word in two leaves, the first a number. */
-function takeSplit(reader: LineReader, length: number, second: 'unit' | 'operator'): void {
-  const { start, end } = reader.peek()!;
-  reader.takePieces([
-    { kind: 'number', start, end: start + length },
-    { kind: second, start: start + length, end },
-  ]);
 }
 
 /** Number and unit of an amount; reports and returns null where the amount cannot be. */
@@ -272,8 +269,13 @@ export function readMeasure(reader: LineReader): Measure | null {
   const value = numberOf(text.slice(0, length));
   let unit: string | undefined;
   if (length < text.length) {
-    unit = text.slice(length);
-    takeSplit(reader, length, 'unit');
+    unit = withoutComma(text.slice(length));
+    const unitEnd = start + length + unit.length;
+    reader.takePieces([
+      { kind: 'number', ...numberSpan },
+      { kind: 'unit', start: start + length, end: unitEnd },
+      ...(unitEnd < end ? [{ kind: 'operator' as const, start: unitEnd, end }] : []),
+    ]);
   } else {
     reader.take('number');
     const next = reader.word();
@@ -283,9 +285,8 @@ export function readMeasure(reader: LineReader): Measure | null {
       !Object.hasOwn(QUALIFIERS, next) &&
       next !== 'in'
     ) {
-      const bare = next.endsWith(',') ? next.slice(0, -1) : next;
-      unit = bare;
-      takeUnit(reader, bare);
+      unit = withoutComma(next);
+      takeUnit(reader, unit);
     }
   }
   if (unit === undefined) {
@@ -294,7 +295,7 @@ export function readMeasure(reader: LineReader): Measure | null {
   }
   const quantity = quantityOf(value, unit);
   if (quantity === null) {
-    const unitStart = length < text.length ? start + length : reader.end - unit.length;
+    const unitStart = reader.line.indexOf(unit, start + length);
     reader.report('bad-unit', `“${unit}” is no unit that measures an amount.`, {
       start: unitStart,
       end: unitStart + unit.length,
@@ -302,6 +303,11 @@ export function readMeasure(reader: LineReader): Measure | null {
     return null;
   }
   return { quantity, numberSpan, span: { start, end: reader.end } };
+}
+
+/** A unit without the comma that may stand between two amounts; a comma alone is kept. */
+function withoutComma(unit: string): string {
+  return 1 < unit.length && unit.endsWith(',') ? unit.slice(0, -1) : unit;
 }
 
 function takeUnit(reader: LineReader, bare: string): void {
@@ -320,7 +326,7 @@ function takeUnit(reader: LineReader, bare: string): void {
 export function readSites(reader: LineReader): SiteNode[] {
   if (!reader.takeWord('at', 'link')) return [];
   const sites: SiteNode[] = [];
-  while (reader.word()?.startsWith(':')) {
+  for (let next = reader.word(); next?.startsWith(':') || next === ','; next = reader.word()) {
     const { text, start } = reader.peek()!;
     const pieces: { kind: 'site' | 'operator' | 'text'; start: number; end: number }[] = [];
     for (const { 0: piece, index } of text.matchAll(/:\d{1,3}|,|[^:,]+|:/g)) {

@@ -26,6 +26,10 @@ export interface Block {
 export interface PlacedBlock {
   readonly firstLine: number;
   readonly block: Block;
+  /** As it stands in the text, blank lines behind it included. */
+  readonly raw: string;
+  /** Line breaks in `raw`. */
+  readonly height: number;
 }
 
 export interface RouteDocument {
@@ -35,26 +39,66 @@ export interface RouteDocument {
 const BLOCKS_REMEMBERED = 6000;
 const blocks = boundedCache<string, Block>(BLOCKS_REMEMBERED);
 
-/** Reads a text; line breaks of every kind count as one. */
-export function readDocument(text: string, language: Language): RouteDocument {
+/**
+ * Reads a text; line breaks of every kind count as one.
+ *
+ * Blocks that stand at the start or the end of the text as they did in `previous` are taken over unread; the result is
+ * the same without it.
+ */
+export function readDocument(text: string, language: Language, previous?: RouteDocument): RouteDocument {
   const plain = text.includes('\r') ? text.replace(/\r\n?/g, '\n') : text;
   const source = language === 'markdown' ? maskMarkdown(plain) : plain;
+  const old = previous?.blocks ?? [];
   const placed: PlacedBlock[] = [];
   let start = 0;
   let firstLine = 0;
-  let line = 0;
-  for (let at = 0; at <= source.length; line++) {
-    const next = source.indexOf('\n', at);
-    const end = next < 0 ? source.length : next;
-    if (start < at && opensStep(source, at)) {
-      add(placed, source.slice(start, at), firstLine);
-      start = at;
-      firstLine = line;
-    }
-    at = end + 1;
+  for (const each of old) {
+    const end = start + each.raw.length;
+    if (!source.startsWith(each.raw, start) || !endsBlock(source, end)) break;
+    placed.push(each);
+    start = end;
+    firstLine += each.height;
   }
-  add(placed, source.slice(start), firstLine);
+  const kept = placed.length;
+  let end = source.length;
+  let tail = old.length;
+  for (; kept < tail; tail--) {
+    const { raw } = old[tail - 1]!;
+    const from = end - raw.length;
+    if (from < start || !source.endsWith(raw, end) || !(from === start || startsBlock(source, from))) break;
+    end = from;
+  }
+  for (let at = start; at < end; ) {
+    const next = nextStep(source, at, end);
+    firstLine = add(placed, source.slice(at, next), firstLine);
+    at = next;
+  }
+  for (const each of old.slice(tail)) {
+    placed.push(each.firstLine === firstLine ? each : { ...each, firstLine });
+    firstLine += each.height;
+  }
   return { blocks: placed };
+}
+
+/** Whether a block may begin here: a line that opens a step. */
+function startsBlock(source: string, at: number): boolean {
+  return source[at - 1] === '\n' && opensStep(source, at);
+}
+
+function endsBlock(source: string, at: number): boolean {
+  return at === source.length || startsBlock(source, at);
+}
+
+/** Start of the first line behind `from` that opens a step; `end` where there is none. */
+function nextStep(source: string, from: number, end: number): number {
+  for (
+    let line = source.indexOf('\n', from);
+    0 <= line && line + 1 < end;
+    line = source.indexOf('\n', line + 1)
+  ) {
+    if (opensStep(source, line + 1)) return line + 1;
+  }
+  return end;
 }
 
 /** The tree of a line of the document; null for blank lines at the end of a block and outside fences. */
@@ -70,16 +114,20 @@ export function lineAt({ blocks: placed }: RouteDocument, line: number): LineTre
   return found?.block.lines[line - found.firstLine] ?? null;
 }
 
-function add(placed: PlacedBlock[], text: string, firstLine: number): void {
-  const known = blocks.get(text);
-  const block = known ?? readBlock(text);
-  if (known === undefined) blocks.set(text, block);
-  if (block.lines.length !== 0) placed.push({ firstLine, block });
+/** Adds one block and answers with the line behind it. */
+function add(placed: PlacedBlock[], raw: string, firstLine: number): number {
+  const known = blocks.get(raw);
+  const block = known ?? readBlock(raw);
+  if (known === undefined) blocks.set(raw, block);
+  let height = 0;
+  for (let at = raw.indexOf('\n'); 0 <= at; at = raw.indexOf('\n', at + 1)) height++;
+  placed.push({ firstLine, block, raw, height });
+  return firstLine + height;
 }
 
 function opensStep(text: string, lineStart: number): boolean {
   let at = lineStart;
-  while (text[at] === ' ' || text[at] === '\t') at++;
+  while (text[at] === ' ' || text[at] === '\t' || text[at] === '\uFEFF') at++;
   if (!text.startsWith('step', at)) return false;
   const after = text[at + 4];
   return after === undefined || /\s/.test(after);

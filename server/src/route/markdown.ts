@@ -8,26 +8,29 @@
 
 /** The page with every line outside the fences emptied; line breaks must be `\n`. */
 export function maskMarkdown(page: string): string {
-  let fence: { mark: string; length: number; ours: boolean } | null = null;
-  return page
-    .split('\n')
-    .map((line) => {
-      const found = fenceOf(line);
-      if (fence === null) {
-        if (found !== null) fence = { ...found, ours: found.info.split(/[\s{,]/, 1)[0] === 'lyate' };
-        return '';
-      }
-      const closes = found?.mark === fence.mark && fence.length <= found.length && found.info === '';
-      if (closes) {
-        fence = null;
-        return '';
-      }
-      return fence.ours ? line : '';
-    })
-    .join('\n');
+  const lines = page.split('\n');
+  const indents = fenceIndents(lines);
+  return lines.map((line, at) => (indents[at] === null ? '' : line)).join('\n');
 }
 
-function fenceOf(line: string): { mark: string; length: number; info: string } | null {
+/** For each line inside a fence the indentation of the fence; null for all other lines. */
+export function fenceIndents(lines: readonly string[]): (string | null)[] {
+  let open: { mark: string; length: number; indent: string; ours: boolean } | null = null;
+  return lines.map((line) => {
+    const fence = fenceOf(line);
+    if (open === null) {
+      if (fence !== null) open = { ...fence, ours: fence.info.split(/[\s{,]/, 1)[0] === 'lyate' };
+      return null;
+    }
+    if (fence?.mark === open.mark && open.length <= fence.length && fence.info === '') {
+      open = null;
+      return null;
+    }
+    return open.ours ? open.indent : null;
+  });
+}
+
+function fenceOf(line: string): { mark: string; length: number; indent: string; info: string } | null {
   const start = line.length - line.trimStart().length;
   const mark = line[start];
   if (mark !== '`' && mark !== '~') return null;
@@ -36,5 +39,5 @@ function fenceOf(line: string): { mark: string; length: number; info: string } |
   if (end - start < 3) return null;
   const info = line.slice(end).trim();
   if (mark === '`' && info.includes('`')) return null;
-  return { mark, length: end - start, info };
+  return { mark, length: end - start, indent: line.slice(0, start), info };
 }

@@ -77,9 +77,11 @@ export function resolveMixture(
   return { parts, strength: node.strength };
 }
 
-/** A compound or structure that stands where a solvent does is looked up among the solvents by its key. */
+/** What stands where a solvent does is one: compounds and structures are looked up among the solvents by their key. */
 export function asSolvent(substance: Substance, tables: Tables): Substance {
-  if (substance.solvent !== null || substance.smiles === null) return substance;
+  if (substance.solvent !== null)
+    return substance.kind === 'reagent' ? { ...substance, kind: 'solvent' } : substance;
+  if (substance.smiles === null) return substance;
   const key = substanceKey(substance.smiles);
   return { ...substance, solvent: (key === null ? undefined : tables.solventByKey.get(key)) ?? null };
 }

@@ -263,7 +263,8 @@ function readTemperature(reader: LineReader): number | 'reflux' {
   // In `-78 to 0 °C` the unit stands once for both.
   if (reader.word(1) === 'to' && leadingNumber(word) === word.length) {
     const { start, end } = reader.take('number');
-    return kelvin(reader, numberOf(word) + ABSOLUTE_ZERO_C, { start, end });
+    const value = Math.round((numberOf(word) + ABSOLUTE_ZERO_C) * 1e6) / 1e6;
+    return kelvin(reader, value, { start, end });
   }
   const measure = readMeasure(reader);
   if (measure === null) return ROOM_TEMPERATURE;

@@ -9,7 +9,7 @@
  */
 import type { Tables } from '../tables/tables.ts';
 import { type BlockDefinitions, definitionsOf } from './definitions.ts';
-import { type Block, type Language, readDocument } from './document.ts';
+import { type Block, type Language, type RouteDocument, readDocument } from './document.ts';
 import { rangeOf } from './names.ts';
 import type { AcceptStatement, Compound, Definition, Plan, Step, TextProblem } from './plan.ts';
 import { type Before, resolveStep } from './step.ts';
@@ -41,6 +41,12 @@ interface ResolvedBlock {
   readonly after: Before;
 }
 
+/** A step at its last place; made anew where it has moved. */
+interface Standing {
+  readonly core: Step;
+  readonly step: Step;
+}
+
 /** Resolves one text once. */
 export function resolvePlan(
   text: string,
@@ -58,6 +64,9 @@ export function resolvePlan(
 export function createPlanReader(tables: Tables, options: ReaderOptions = {}): PlanReader {
   const defined = new WeakMap<Block, BlockDefinitions>();
   const resolved = new WeakMap<Block, ResolvedBlock>();
+  const standing = new WeakMap<Block, Standing>();
+  const compoundsAt = new WeakMap<BlockDefinitions, { firstLine: number; compounds: readonly Compound[] }>();
+  let last: { file: string; language: Language; document: RouteDocument } | null = null;
   const definitions = (block: Block): BlockDefinitions => {
     const known = defined.get(block);
     if (known !== undefined) return known;
@@ -97,9 +106,27 @@ export function createPlanReader(tables: Tables, options: ReaderOptions = {}): P
     return fresh;
   };
 
+  const compoundsOf = (found: BlockDefinitions, firstLine: number): readonly Compound[] => {
+    const known = compoundsAt.get(found);
+    if (known?.firstLine === firstLine) return known.compounds;
+    const compounds = placed(found, firstLine);
+    compoundsAt.set(found, { firstLine, compounds });
+    return compounds;
+  };
+
+  const place = (block: Block, core: Step, firstLine: number): Step => {
+    const known = standing.get(block);
+    if (known?.core === core && known.step.firstLine === firstLine) return known.step;
+    const step = { ...core, firstLine };
+    standing.set(block, { core, step });
+    return step;
+  };
+
   return {
     resolve({ file, text, language }, files = new Map()) {
-      const document = readDocument(text, language);
+      const previous = last?.file === file && last.language === language ? last.document : undefined;
+      const document = readDocument(text, language, previous);
+      last = { file, language, document };
       const problems: TextProblem[] = [];
       const accepts: AcceptStatement[] = [];
       const own: Compound[] = [];
@@ -116,7 +143,7 @@ export function createPlanReader(tables: Tables, options: ReaderOptions = {}): P
         for (const { definition } of found.compounds) {
           if (!declared.has(definition.name)) declared.set(definition.name, definition);
         }
-        own.push(...placed(found, firstLine));
+        own.push(...compoundsOf(found, firstLine));
       }
       const brought = followUses(file, uses, files, tables);
       problems.push(...brought.problems, ...definedTwice(own, brought.compounds));
@@ -124,7 +151,7 @@ export function createPlanReader(tables: Tables, options: ReaderOptions = {}): P
         const { name, smiles, file: from, measured } = compound;
         if (!declared.has(name)) declared.set(name, { name, smiles, file: from, measured });
       }
-      const steps = resolveSteps(document.blocks, declared, resolveBlock, problems);
+      const steps = resolveSteps(document.blocks, declared, resolveBlock, place, problems);
       if (steps.length !== 0) problems.push(...unused(own, document.blocks));
       problems.sort(inOrder);
       const compounds = [...own, ...brought.compounds.map(({ compound }) => compound)];
@@ -143,6 +170,7 @@ function resolveSteps(
     declared: ReadonlyMap<string, Definition>,
     before: { key: string; after: Before } | null,
   ) => ResolvedBlock,
+  place: (block: Block, core: Step, firstLine: number) => Step,
   problems: TextProblem[],
 ): Step[] {
   const steps: Step[] = [];
@@ -154,7 +182,7 @@ function resolveSteps(
     const from = opening?.continues ?? null;
     const before = from === null ? null : (byLabel.get(from.label) ?? null);
     const { step: core, after } = resolveBlock(block, declared, before);
-    const step = { ...core, firstLine };
+    const step = place(block, core, firstLine);
     steps.push(step);
     if (from !== null && before === null) {
       problems.push({

@@ -6,6 +6,7 @@
  *  1. Depends only on the block, the definitions it mentions, and what it goes on from.   (tests/route/resolve.test.ts)
  *  2. Lines are relative to the step's first line.
  */
+import { foldName } from '../tables/names.ts';
 import type { Tables } from '../tables/tables.ts';
 import type { Block } from './document.ts';
 import { type Basis, doseOf, liquidVolume, molarMassOf, USUAL_CONCENTRATION, type Written } from './dose.ts';
@@ -381,6 +382,10 @@ function addedAmount(each: Draft, syntax: Addition, basis: Basis, scope: Scope, 
     });
   }
   if (!dose.assumed) return { ...dose, range };
+  if (syntax.keyword === 'adjust') {
+    const carriers = dose.carriers.map(({ solvent }) => ({ solvent, volume: null }));
+    return { ...dose, mol: null, equiv: null, mass: null, volume: null, carriers, range };
+  }
   if (stuck && substance.kind !== 'unknown' && syntax.keyword === 'charge' && written.carriers.length === 0) {
     reportMissing(
       `The amount of ${substance.name} in mol cannot be worked out from this; write mmol or equiv.`,
@@ -415,8 +420,7 @@ function millimol(mol: number): string {
 }
 
 function solventNamed(name: string, { range }: Substance, { tables }: Scope): Substance | null {
-  const folded = tables.solventByName;
-  const row = [...folded.values()].find((solvent) => solvent.name === name) ?? null;
+  const row = tables.solventByName.get(foldName(name)) ?? null;
   return row === null ? null : rowSubstance(name, null, row, range);
 }
 
