@@ -1,5 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
+import { readDocument } from '../../server/src/route/document.ts';
 import { createPlanReader } from '../../server/src/route/resolve.ts';
 import { plan } from './draw.ts';
 import { SMALL_TABLES } from './small-tables.ts';
@@ -20,8 +21,16 @@ const line = fc.constantFrom(
   'convert 1 + 2 to 1 yield 50 %',
   'solvent THF/1 1:1',
   'frob',
+  'compound "x y" = CC',
+  'charge "x y" 1 mmol',
+  'charge "1 M 2" 1 mL',
+  'solvent "THF/2" 1:1',
+  'extract 1 into 2/"x y"',
+  'use "other.lyate"',
+  'step A',
   '',
 );
+const OTHER = { 'other.lyate': 'compound 2 = CCS\ncompound 3 = CCO\n' };
 type Edit = readonly [at: number, remove: number, insert: readonly string[]];
 const edits: fc.Arbitrary<Edit[]> = fc.array(
   fc.tuple(fc.nat(20), fc.nat(3), fc.array(line, { maxLength: 3 })),
@@ -33,10 +42,13 @@ describe('a reader that has seen other versions', () => {
     fc.assert(
       fc.property(fc.array(line, { maxLength: 20 }), edits, (start, changes) => {
         const reader = createPlanReader(SMALL_TABLES);
+        const files = new Map(Object.entries(OTHER));
         const lines: string[] = [...start];
         const look = () => {
           const text = lines.join('\n');
-          expect(reader.resolve({ file: 'plan.lyate', text, language: 'lyate' })).toEqual(plan(text));
+          expect(reader.resolve({ file: 'plan.lyate', text, language: 'lyate' }, files)).toEqual(
+            plan(text, { files: OTHER }),
+          );
         };
         look();
         for (const [at, remove, insert] of changes) {
@@ -56,6 +68,26 @@ describe('a reader that has seen other versions', () => {
           const known = byKey.get(step.contentKey);
           if (known !== undefined) expect(step).toEqual(known);
           byKey.set(step.contentKey, step);
+        }
+      }),
+      { numRuns: 300 },
+    );
+  });
+});
+
+describe('blocks', () => {
+  it('joined in order give back the text, with and without an earlier version', () => {
+    fc.assert(
+      fc.property(fc.array(line, { maxLength: 20 }), fc.array(line, { maxLength: 20 }), (before, now) => {
+        const text = now.join('\n');
+        const earlier = readDocument(before.join('\n'), 'lyate');
+        for (const document of [readDocument(text, 'lyate'), readDocument(text, 'lyate', earlier)]) {
+          expect(document.blocks.map(({ raw }) => raw).join('')).toBe(text);
+          for (const { firstLine, block } of document.blocks) {
+            expect(block.lines.map((tree) => tree.text)).toEqual(
+              now.slice(firstLine, firstLine + block.lines.length),
+            );
+          }
         }
       }),
       { numRuns: 300 },

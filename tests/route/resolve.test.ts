@@ -169,6 +169,15 @@ describe('problems', () => {
     },
   );
 
+  it('takes words that JavaScript knows for names like any other', () => {
+    const text = 'step constructor\n charge __proto__ 1 mmol\n toString 1\n charge LDA 5 constructor\n';
+    expect(problemsOf(text, plan(text)).map(({ check, text: at }) => [check, at])).toEqual([
+      ['unknown-name', '__proto__'],
+      ['unreadable-line', 'toString'],
+      ['bad-unit', 'constructor'],
+    ]);
+  });
+
   it('offers the nearest names', () => {
     expect(plan('step A\n base LDAA 1 mmol\n').steps[0]!.problems[0]!.message).toContain('LDA');
   });
@@ -191,6 +200,16 @@ describe('problems', () => {
       ['defined-twice', 'A', 4],
     ]);
     expect(plan('compound 1 = CCO\ncompound 1 = OCC\n').problems).toEqual([]);
+  });
+
+  it('say it once at the first of many', () => {
+    const text = 'step A\nstep A\nstep A\n';
+    expect(problemsOf(text, plan(text)).map(({ line }) => line)).toEqual([0, 1, 2]);
+  });
+
+  it('say one thing about a bracket that is not closed', () => {
+    const text = 'step A\n charge <C(C 1 mmol\n';
+    expect(problemsOf(text, plan(text))).toEqual([{ check: 'unreadable-line', text: '<', line: 1 }]);
   });
 
   it('name a compound that no step mentions, unless there is no step', () => {

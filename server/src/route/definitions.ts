@@ -99,7 +99,7 @@ export function definitionsOf(block: Block, file: string | undefined, tables: Ta
   return {
     title,
     compounds: compounds.map(({ draft, measured, nameRange, smilesRange }) => ({
-      definition: intern({ ...draft, measured }),
+      definition: internDefinition({ ...draft, measured }),
       nameRange,
       smilesRange,
     })),
@@ -109,7 +109,8 @@ export function definitionsOf(block: Block, file: string | undefined, tables: Ta
   };
 }
 
-function intern(definition: Definition): Definition {
+/** The one object that stands for this definition, whoever asks. */
+export function internDefinition(definition: Definition): Definition {
   const key = JSON.stringify(definition);
   const known = interned.get(key);
   if (known !== undefined) return known;

@@ -4,7 +4,7 @@
  * Knows: lines and trees.  Must not know: tables, structures, what a step means.
  * Invariants:
  *  1. A block depends on its own text alone and is remembered by it, so that an edit reads one block anew.
- *  2. Blocks in order hold every line that is not blank.                          (tests/route/document.test.ts)
+ *  2. Blocks in order hold every line that is not blank.                          (tests/route/incremental.test.ts)
  */
 import { boundedCache } from '../tables/cache.ts';
 import { maskMarkdown } from './markdown.ts';
@@ -147,11 +147,10 @@ function readBlock(text: string): Block {
   };
 }
 
-/** A quoted name as a whole, of others the first word, and the first words of the parts of a mixture. */
+/** What may stand for a declared compound in a name: a quoted one as a whole, else the first word; and the parts of a mixture. */
 export function mentionsOf({ kind, text, words }: NameNode): string[] {
   if (kind === 'structure') return [];
-  if (kind === 'string') return [text];
-  const first = words[0]!.text;
+  const first = kind === 'string' ? text : words[0]!.text;
   if (!text.includes('/')) return [first];
   return [first, ...text.split('/').map((part) => part.trim().split(/\s/, 1)[0]!)];
 }

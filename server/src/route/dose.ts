@@ -3,7 +3,7 @@
  *
  * Knows: quantities, molar masses, densities, usual strengths.  Must not know: acidity, statements, text.
  * Units: mol, g, L; densities g/mL.
- * Invariant: two ways of fixing the same mol agree within 5 % or are reported.       (tests/route/dose.test.ts)
+ * Invariant: two ways of fixing the same mol agree within 5 % or are reported.       (tests/route/resolve.test.ts)
  */
 import type { Amount, Substance } from './plan.ts';
 import { structureOf } from './structures.ts';
@@ -47,6 +47,8 @@ interface Stock {
   readonly massShare: number | null;
   /** Name of the solvent that comes with it where the writer names none; null where it comes neat. */
   readonly solvent: string | null;
+  /** Taken from how the reagent is bought, so that it settles nothing that the writer has settled. */
+  readonly usual: boolean;
 }
 
 /** g/mol of a substance; null where nothing is known. */
@@ -72,7 +74,11 @@ export function doseOf(
   const volume = volumeOf(written, basis);
   const estimates: number[] = [];
   let stuck = false;
+  const settled = quantities.some(({ quantity }) =>
+    ['substance', 'mass', 'equiv', 'mol-share'].includes(quantity.dimension),
+  );
   for (const { quantity, portions } of quantities) {
+    if (settled && stock.usual && ['volume', 'relative-volume'].includes(quantity.dimension)) continue;
     const total = { dimension: quantity.dimension, value: quantity.value * portions };
     const mol = molOf(total, substance, stock, mass, basis);
     if (mol === null) stuck ||= ['mass', 'volume'].includes(quantity.dimension);
@@ -137,26 +143,25 @@ function stockOf(
   { strength, saturated, quantities }: Written,
   mass: number | null,
 ): Stock {
-  const usual = reagent?.stockSolvent ?? 'water';
-  if (strength?.dimension === 'molarity')
-    return { molarity: strength.value, massShare: null, solvent: usual };
-  if (strength?.dimension === 'mass-share')
-    return { molarity: null, massShare: strength.value, solvent: usual };
-  if (strength?.dimension === 'mass-concentration' && mass !== null) {
-    return { molarity: strength.value / mass, massShare: null, solvent: usual };
-  }
-  if (saturated) return { molarity: reagent?.saturatedMolarity ?? null, massShare: null, solvent: 'water' };
+  const bought = reagent?.stockSolvent ?? null;
+  const none = { molarity: null, massShare: null, usual: false };
+  // A share by mass may be that of a solid, so it brings a solvent only where the reagent is sold in one.
+  if (strength?.dimension === 'mass-share') return { ...none, massShare: strength.value, solvent: bought };
+  const molarity =
+    strength?.dimension === 'molarity'
+      ? strength.value
+      : strength?.dimension === 'mass-concentration' && mass !== null
+        ? strength.value / mass
+        : null;
+  if (molarity !== null) return { ...none, molarity, solvent: bought ?? 'water' };
+  if (saturated) return { ...none, molarity: reagent?.saturatedMolarity ?? null, solvent: 'water' };
   const byVolume = quantities.some(({ quantity }) =>
     ['volume', 'relative-volume'].includes(quantity.dimension),
   );
-  if (reagent === null || !byVolume) return { molarity: null, massShare: null, solvent: null };
-  const { stockMolarity, stockMassShare, stockSolvent } = reagent;
-  const dissolved = stockMolarity !== null || stockMassShare !== null;
-  return {
-    molarity: stockMolarity,
-    massShare: stockMassShare,
-    solvent: dissolved ? (stockSolvent ?? 'water') : null,
-  };
+  const isDissolved = reagent !== null && (reagent.stockMolarity !== null || reagent.stockMassShare !== null);
+  if (!byVolume || !isDissolved) return { ...none, solvent: null };
+  const { stockMolarity, stockMassShare } = reagent;
+  return { molarity: stockMolarity, massShare: stockMassShare, solvent: bought ?? 'water', usual: true };
 }
 
 function molOf(

@@ -2,7 +2,7 @@
  * Finds out what a name stands for: a compound of the plan, a row of the tables, a structure, or nothing known.
  *
  * Knows: names, tables, declared compounds.  Must not know: amounts, flasks.
- * Invariant: a declared compound wins over the tables, exact and case-sensitive.     (tests/route/names.test.ts)
+ * Invariant: a declared compound wins over the tables, exact and case-sensitive.     (tests/route/resolve.test.ts)
  */
 import type { Span } from '../chemistry/molecule.ts';
 import { type FoundName, lookUpName, nearestNames } from '../tables/names.ts';
@@ -13,6 +13,9 @@ import type { Definition, MixturePart, Range, Substance, TextProblem } from './p
 import { structureOf, substanceKey } from './structures.ts';
 import type { NameNode, Word } from './tree.ts';
 import { leadingNumber, numberOf, type Quantity, quantityOf } from './units.ts';
+
+/** A mixture of more parts is taken for a name that nobody knows. */
+const MOST_PARTS = 12;
 
 /** What names are looked up in, and the line they stand in. */
 export interface Scope {
@@ -56,11 +59,17 @@ export function resolveMixture(
 ): { parts: MixturePart[]; strength: Named['strength'] } {
   const whole = lookUpName(scope.tables, textsOf(node.words));
   const split = node.kind !== 'structure' && node.text.includes('/') && whole?.length !== node.words.length;
-  if (!split || scope.declared.has(node.text)) {
+  if (!split || scope.declared.has(node.kind === 'string' ? node.text : node.words[0]!.text)) {
     const { substance, strength } = resolveName(node, scope, need);
     return { parts: [{ substance: asSolvent(substance, scope.tables), share: 1 }], strength };
   }
   const pieces = piecesOf(node);
+  if (MOST_PARTS < pieces.length) {
+    return {
+      parts: [{ substance: unknown(node, rangeOf(scope.line, node), scope, need), share: 1 }],
+      strength: null,
+    };
+  }
   const shares = ratio?.length === pieces.length ? ratio : pieces.map(() => 1);
   if (ratio !== null && ratio.length !== pieces.length) {
     scope.problems.push({
@@ -147,8 +156,6 @@ function quoted(node: NameNode, scope: Scope, need: Need): Named {
     return { substance: rowSubstance(node.text, whole.reagent, whole.solvent, range), strength };
   }
   const { words, strength } = withoutStrength(node.words);
-  const exact = words.length === node.words.length ? undefined : scope.declared.get(textsOf(words).join(' '));
-  if (exact !== undefined) return { substance: compound(exact, range), strength };
   const rest = lookUpName(scope.tables, textsOf(words));
   if (rest !== null && rest.length === words.length) {
     const name = textsOf(words).join(' ');

@@ -8,12 +8,13 @@
  *  3. Steps with equal content keys are equal but for their first line.                       (same)
  */
 import type { Tables } from '../tables/tables.ts';
-import { type BlockDefinitions, definitionsOf } from './definitions.ts';
+import { compoundsDefinedTwice, labelsUsedTwice } from './defined-twice.ts';
+import { type BlockDefinitions, definitionsOf, internDefinition } from './definitions.ts';
 import { type Block, type Language, type RouteDocument, readDocument } from './document.ts';
+import type { Before } from './draft.ts';
 import { rangeOf } from './names.ts';
-import type { AcceptStatement, Compound, Definition, Plan, Step, TextProblem } from './plan.ts';
-import { type Before, resolveStep } from './step.ts';
-import { sameStructure } from './structures.ts';
+import type { AcceptStatement, Compound, Definition, Plan, Range, Step, TextProblem } from './plan.ts';
+import { resolveStep } from './step.ts';
 import { followUses, placed, shiftRange } from './use.ts';
 
 export interface PlanText {
@@ -66,6 +67,7 @@ export function createPlanReader(tables: Tables, options: ReaderOptions = {}): P
   const resolved = new WeakMap<Block, ResolvedBlock>();
   const standing = new WeakMap<Block, Standing>();
   const compoundsAt = new WeakMap<BlockDefinitions, { firstLine: number; compounds: readonly Compound[] }>();
+  const broughtDefinitions = new WeakMap<Compound, Definition>();
   let last: { file: string; language: Language; document: RouteDocument } | null = null;
   const definitions = (block: Block): BlockDefinitions => {
     const known = defined.get(block);
@@ -94,7 +96,7 @@ export function createPlanReader(tables: Tables, options: ReaderOptions = {}): P
       tables,
       declared,
       before: before?.after ?? null,
-      ...options,
+      ...(options.concentration === undefined ? {} : { concentration: options.concentration }),
     });
     const contentKey = JSON.stringify([
       block.text,
@@ -112,6 +114,15 @@ export function createPlanReader(tables: Tables, options: ReaderOptions = {}): P
     const compounds = placed(found, firstLine);
     compoundsAt.set(found, { firstLine, compounds });
     return compounds;
+  };
+
+  const definitionOf = (compound: Compound): Definition => {
+    const known = broughtDefinitions.get(compound);
+    if (known !== undefined) return known;
+    const { name, smiles, file, measured } = compound;
+    const definition = internDefinition({ name, smiles, file, measured });
+    broughtDefinitions.set(compound, definition);
+    return definition;
   };
 
   const place = (block: Block, core: Step, firstLine: number): Step => {
@@ -146,10 +157,12 @@ export function createPlanReader(tables: Tables, options: ReaderOptions = {}): P
         own.push(...compoundsOf(found, firstLine));
       }
       const brought = followUses(file, uses, files, tables);
-      problems.push(...brought.problems, ...definedTwice(own, brought.compounds));
+      problems.push(...brought.problems);
       for (const { compound } of brought.compounds) {
-        const { name, smiles, file: from, measured } = compound;
-        if (!declared.has(name)) declared.set(name, { name, smiles, file: from, measured });
+        if (!declared.has(compound.name)) declared.set(compound.name, definitionOf(compound));
+      }
+      if (declared.size < own.length + brought.compounds.length) {
+        problems.push(...compoundsDefinedTwice(own, brought.compounds));
       }
       const steps = resolveSteps(document.blocks, declared, resolveBlock, place, problems);
       if (steps.length !== 0) problems.push(...unused(own, document.blocks));
@@ -174,7 +187,8 @@ function resolveSteps(
   problems: TextProblem[],
 ): Step[] {
   const steps: Step[] = [];
-  const byLabel = new Map<string, { step: Step; key: string; after: Before }>();
+  const byLabel = new Map<string, { key: string; after: Before }>();
+  const labels = new Map<string, Range[]>();
   for (const { block, firstLine } of blocks) {
     if (!block.isStep) continue;
     const head = block.lines[0]!.syntax;
@@ -193,68 +207,14 @@ function resolveSteps(
       });
     }
     if (opening === null) continue;
-    const first = byLabel.get(step.label);
-    if (first === undefined) byLabel.set(step.label, { step, key: step.contentKey, after });
-    else
-      problems.push(
-        ...twice(
-          `step ${step.label}`,
-          shiftRange(first.step.labelRange, first.step.firstLine),
-          shiftRange(step.labelRange, firstLine),
-        ),
-      );
+    if (!byLabel.has(step.label)) byLabel.set(step.label, { key: step.contentKey, after });
+    const range = shiftRange(step.labelRange, firstLine);
+    const places = labels.get(step.label);
+    if (places === undefined) labels.set(step.label, [range]);
+    else places.push(range);
   }
+  for (const [label, places] of labels) problems.push(...labelsUsedTwice(label, places));
   return steps;
-}
-
-type Range = TextProblem['range'];
-
-/** One finding at each of the two places, pointing at the other. */
-function twice(what: string, first: Range, second: Range): TextProblem[] {
-  const message = `There are two of ${what}; the first one counts.`;
-  return [
-    { check: 'defined-twice', message, range: first, related: [{ range: second, message: 'the other one' }] },
-    { check: 'defined-twice', message, range: second, related: [{ range: first, message: 'the first one' }] },
-  ];
-}
-
-function definedTwice(
-  own: readonly Compound[],
-  brought: readonly { compound: Compound; by: Range }[],
-): TextProblem[] {
-  const problems: TextProblem[] = [];
-  const first = new Map<string, { compound: Compound; at: Range }>();
-  const differ = (one: Compound, other: Compound) => !sameStructure(one.smiles, other.smiles);
-  for (const compound of own) {
-    const known = first.get(compound.name);
-    if (known === undefined) first.set(compound.name, { compound, at: compound.nameRange });
-    else if (differ(known.compound, compound)) {
-      problems.push(
-        ...twice(`compound ${compound.name} with different structures`, known.at, compound.nameRange),
-      );
-    }
-  }
-  for (const { compound, by } of brought) {
-    const known = first.get(compound.name);
-    if (known === undefined) {
-      first.set(compound.name, { compound, at: by });
-      continue;
-    }
-    if (!differ(known.compound, compound)) continue;
-    problems.push({
-      check: 'defined-twice',
-      message: `Compound ${compound.name} has another structure in ${compound.file}; the one ${known.compound.file ?? 'here'} counts.`,
-      range: known.at,
-      related: [
-        {
-          range: compound.nameRange,
-          message: 'the other one',
-          ...(compound.file ? { file: compound.file } : {}),
-        },
-      ],
-    });
-  }
-  return problems;
 }
 
 function unused(own: readonly Compound[], blocks: PlacedBlocks): TextProblem[] {
