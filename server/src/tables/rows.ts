@@ -157,3 +157,32 @@ export interface SourceRow {
   readonly title: string;
   readonly text: string;
 }
+
+/** Substituent constants of one group on an arene. */
+export interface SubstituentRow extends Sourced {
+  readonly name: string;
+  /** The substituent on a methyl group whose carbon is marked :1. */
+  readonly smiles: string;
+  readonly sigmaM: number;
+  readonly sigmaP: number;
+  readonly sigmaPMinus: number | null;
+  readonly sigmaPPlus: number | null;
+  readonly note: string;
+}
+
+/** What one term of the estimator in water is worth; names are those of `chemistry/terms.ts`. */
+export interface TermRow {
+  readonly name: string;
+  /** pKa units for a factor of one. */
+  readonly value: number;
+  /** Molecules of the fit in which the term occurs. */
+  readonly n: number;
+}
+
+/** How far estimates of one kind go astray: of a family (sd), or of terms that no molecule of the fit has shown (variance). */
+export interface SpreadRow {
+  readonly kind: 'family' | 'term';
+  readonly name: string;
+  readonly value: number;
+  readonly n: number;
+}

@@ -1,0 +1,84 @@
+/**
+ * The sites that the rules of `groups.csv` find in a molecule, for tools that run before the tables are built.
+ *
+ * Must not know: values.
+ */
+import { readFileSync } from 'node:fs';
+import { parse } from 'csv-parse/sync';
+import { buildGraph } from '../src/chemistry/build-graph.ts';
+import type { ParentRow } from '../src/chemistry/estimate.ts';
+import type { Graph } from '../src/chemistry/graph.ts';
+import { matchSites } from '../src/chemistry/match.ts';
+import { neutralForm } from '../src/chemistry/neutral.ts';
+import { type Pattern, parseSmarts } from '../src/chemistry/smarts.ts';
+import { readSmiles } from '../src/chemistry/smiles.ts';
+import type { Site } from '../src/chemistry/terms.ts';
+import { symmetryClasses } from '../src/chemistry/toolkit.ts';
+
+export interface Rule extends ParentRow {
+  readonly kind: 'acid' | 'base';
+  readonly family: string;
+  readonly priority: number;
+  readonly example: string;
+  readonly pattern: Pattern;
+}
+
+export interface RuleSite extends Site {
+  readonly rule: Rule;
+  readonly equivalents: number;
+}
+
+export function readRules(file: string): Rule[] {
+  const records = parse(readFileSync(file, 'utf8'), { columns: true, bom: true }) as Record<string, string>[];
+  const number = (text: string | undefined) => (text === undefined || text === '' ? null : Number(text));
+  return records.map((row) => ({
+    id: row.id!,
+    name: row.name!,
+    kind: row.kind === 'base' ? 'base' : 'acid',
+    family: row.family!,
+    priority: Number(row.priority),
+    example: row.example!,
+    pattern: parseSmarts(row.smarts!),
+    water: number(row.water),
+    waterSd: number(row.water_sd),
+    model: row.model!,
+    sources: row.sources!.split(';'),
+  }));
+}
+
+/** One site for each class of equivalent atoms; null where the text cannot be read. */
+export function sitesByRule(
+  smiles: string,
+  rules: readonly Rule[],
+): { graph: Graph; sites: RuleSite[] } | null {
+  const { structure } = readSmiles(smiles);
+  const built = structure === undefined ? undefined : buildGraph(structure);
+  if (built?.graph === undefined) return null;
+  const { graph } = neutralForm(built.graph);
+  const best = new Map<string, { atom: number; rule: Rule }>();
+  for (const rule of rules) {
+    for (const atom of matchSites(graph, rule.pattern)) {
+      const key = `${rule.kind} ${atom}`;
+      const known = best.get(key);
+      if (known === undefined || known.rule.priority < rule.priority) best.set(key, { atom, rule });
+    }
+  }
+  const classes = new Map<number, number>();
+  for (const fragment of graph.fragments)
+    for (const [atom, rank] of symmetryClasses(graph, fragment)) classes.set(atom, rank);
+  const groups = new Map<string, { atom: number; rule: Rule; count: number }>();
+  for (const { atom, rule } of best.values()) {
+    const key = `${rule.kind} ${classes.get(atom)}`;
+    const known = groups.get(key);
+    groups.set(key, known === undefined ? { atom, rule, count: 1 } : { ...known, count: known.count + 1 });
+  }
+  const sites = [...groups.values()].map(({ atom, rule, count }) => ({
+    atom,
+    kind: rule.kind,
+    group: rule.id,
+    family: rule.family,
+    rule,
+    equivalents: count,
+  }));
+  return { graph, sites };
+}
