@@ -10,6 +10,7 @@
  */
 import { atomKinds, orderBetween, permanentCharge, unfolded } from './atom-kinds.ts';
 import { type Core, coresOf, frameName } from './cores.ts';
+import { bondDistances } from './distances.ts';
 import type { Graph } from './graph.ts';
 import type { Sigma, Substituents } from './substituents.ts';
 
@@ -296,22 +297,6 @@ function addCharges(graph: Graph, site: Site, series: string, add: Add): void {
     add(`charge:*.${sign}${Math.min(d, 8)}`, 1);
     add(`charge:${series}.${sign}`, 10 / d ** 2);
   }
-}
-
-/** Bonds between an atom and all others of its graph; −1 where there is no way. */
-export function bondDistances(graph: Graph, start: number): Int16Array {
-  const found = new Int16Array(graph.atoms.length).fill(-1);
-  found[start] = 0;
-  const queue = [start];
-  for (let head = 0; head < queue.length; head++) {
-    const atom = queue[head]!;
-    for (const next of graph.atoms[atom]!.neighbours) {
-      if (found[next] !== -1) continue;
-      found[next] = found[atom]! + 1;
-      queue.push(next);
-    }
-  }
-  return found;
 }
 
 /** The class under which terms were given one prior variance: their kind, and whether they speak of one family or all. */

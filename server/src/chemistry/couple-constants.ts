@@ -1,0 +1,252 @@
+/**
+ * The constant of every couple of a molecule on one scale, from the most trusted value that reaches it.
+ *
+ * Trust falls in this order: the plan's own value, the house's, a measured value on this scale, a measured value
+ * carried over, an estimate on this scale, an estimate carried over. Each hop adds its variance and a printable line.
+ * Knows: couples, estimates.  Must not know: where values are stored, flasks, plans.
+ * Invariants:
+ *  1. `couples` is parallel to the molecule's couples; `steps` of a component rise.   (tests/chemistry/couple-constants.test.ts)
+ *  2. A measured value is returned unchanged on its own scale.
+ */
+import type { ScaleId } from '../tables/rows.ts';
+import { chargePull } from './charges.ts';
+import type { Constant, Couple, OwnValue, Perceived, ProtonStep } from './couple.ts';
+import { type EstimatorTables, estimateInWater } from './estimate.ts';
+import type { Graph } from './graph.ts';
+import { type MicroSite, macroscopicSteps } from './microstates.ts';
+import { neutralForm } from './neutral.ts';
+
+export interface ConstantOptions {
+  /** Leaves out every measured value, to judge the estimates. */
+  readonly estimateOnly?: boolean;
+  readonly own?: readonly OwnValue[];
+}
+
+/** A measured value found for a couple; `step` counts protons lost by the fully protonated form, from 1. */
+export interface MeasuredConstant {
+  readonly couple: number;
+  readonly step: number | null;
+  readonly constant: Constant;
+}
+
+/** Where values other than estimates in water come from. */
+export interface ConstantSources {
+  readonly measured: (perceived: Perceived) => readonly MeasuredConstant[];
+  /** A value taken to another scale; null where no correlation leads there. */
+  readonly carry: (constant: Constant, couple: Couple, to: ScaleId) => Constant | null;
+  /** An estimate made directly on a scale other than water; null where there is none. */
+  readonly estimateElsewhere: (perceived: Perceived, couple: Couple, scale: ScaleId) => Constant | null;
+}
+
+export interface MoleculeConstants {
+  /** Parallel to the molecule's couples; null where no value is known. */
+  readonly couples: readonly (Constant | null)[];
+  /** For each component its stepwise constants from the most acidic proton of the fully protonated form. */
+  readonly steps: readonly (readonly ProtonStep[])[];
+}
+
+/** Couples outside this range of water never change their state in a flask together with others. */
+const LOWEST_COUPLED = -6;
+const HIGHEST_COUPLED = 21;
+const WATER = 'water';
+/** Opposite charges pull less than equal ones push, as amino acids against diamines show. */
+const OPPOSITE_SHARE = 0.85;
+/** sd that the pull between charges adds to an estimated step. */
+const PULL_SD = 0.35;
+/** sd of an own value that names none. */
+const OWN_SD = 0.1;
+
+export function coupleConstants(
+  perceived: Perceived,
+  scale: ScaleId,
+  tables: EstimatorTables,
+  sources: ConstantSources,
+  options: ConstantOptions = {},
+): MoleculeConstants {
+  if (perceived.graph === null)
+    return { couples: perceived.couples.map(() => null), steps: perceived.components.map(() => []) };
+  const measured = options.estimateOnly ? [] : sources.measured(perceived);
+  const own = (options.own ?? []).flatMap((value) => ownConstants(perceived, value));
+  const water = estimatedSteps(perceived, neutralForm(perceived.graph).graph, tables);
+  const steps =
+    scale === WATER
+      ? overridden(perceived, water, WATER, measured, own, sources)
+      : elsewhere(perceived, water, scale, measured, own, sources);
+  return {
+    couples: perceived.couples.map((couple) => reported(couple, steps[couple.component] ?? [])),
+    steps,
+  };
+}
+
+/** Every value on another scale stands alone; further steps of one couple are carried from water. */
+function elsewhere(
+  perceived: Perceived,
+  water: readonly (readonly ProtonStep[])[],
+  scale: ScaleId,
+  measured: readonly MeasuredConstant[],
+  own: readonly MeasuredConstant[],
+  sources: ConstantSources,
+): ProtonStep[][] {
+  const inWater = overridden(perceived, water, WATER, measured, own, sources);
+  const carried = inWater.map((list) => {
+    const seen = new Set<Couple>();
+    return list.flatMap((step): ProtonStep[] => {
+      const first = !seen.has(step.couple);
+      seen.add(step.couple);
+      const direct =
+        first && step.constant.origin === 'estimated'
+          ? sources.estimateElsewhere(perceived, step.couple, scale)
+          : null;
+      const constant = direct ?? sources.carry(step.constant, step.couple, scale);
+      return constant === null ? [] : [{ couple: step.couple, constant }];
+    });
+  });
+  return overridden(perceived, carried, scale, measured, own, sources);
+}
+
+/** Puts measured and own values in the place of less trusted ones, step by step, and brings the steps into order. */
+function overridden(
+  perceived: Perceived,
+  steps: readonly (readonly ProtonStep[])[],
+  scale: ScaleId,
+  measured: readonly MeasuredConstant[],
+  own: readonly MeasuredConstant[],
+  sources: ConstantSources,
+): ProtonStep[][] {
+  const result = steps.map((list) => [...list]);
+  const put = ({ couple: index, step, constant }: MeasuredConstant) => {
+    const couple = perceived.couples[index]!;
+    const list = result[couple.component]!;
+    const place = placeOf(list, couple, step, constant);
+    if (place === -1) list.push({ couple, constant });
+    else list[place] = { couple: step === null ? couple : list[place]!.couple, constant };
+  };
+  const here = measured.filter(({ constant }) => constant.scale === scale);
+  const covered = new Set(here.map(({ couple, step }) => `${couple} ${step}`));
+  for (const value of measured) {
+    if (value.constant.scale === scale || covered.has(`${value.couple} ${value.step}`)) continue;
+    const constant = sources.carry(value.constant, perceived.couples[value.couple]!, scale);
+    if (constant !== null) put({ ...value, constant });
+  }
+  for (const value of here) put(value);
+  for (const value of own) {
+    const constant =
+      value.constant.scale === scale
+        ? value.constant
+        : sources.carry(value.constant, perceived.couples[value.couple]!, scale);
+    if (constant !== null) put({ ...value, constant });
+  }
+  for (const list of result) list.sort((a, b) => a.constant.value - b.constant.value);
+  return result;
+}
+
+/** The step that a value replaces: the one it counts, or that of its couple which lies nearest. */
+function placeOf(
+  list: readonly ProtonStep[],
+  couple: Couple,
+  step: number | null,
+  constant: Constant,
+): number {
+  if (step !== null && list[step - 1] !== undefined && sameKin(list[step - 1]!.couple, couple))
+    return step - 1;
+  let best = -1;
+  list.forEach((one, place) => {
+    if (one.couple !== couple) return;
+    const nearer =
+      best === -1 ||
+      Math.abs(one.constant.value - constant.value) < Math.abs(list[best]!.constant.value - constant.value);
+    if (nearer) best = place;
+  });
+  return best;
+}
+
+function sameKin(first: Couple, second: Couple): boolean {
+  return first === second || first.group === second.group;
+}
+
+/** An own value with its couple: the one at its atoms, or the molecule's only one. */
+function ownConstants(perceived: Perceived, own: OwnValue): MeasuredConstant[] {
+  const at = perceived.couples
+    .map((couple, index) => ({ couple, index }))
+    .filter(
+      ({ couple }) => own.atoms.length === 0 || couple.equivalents.some((atom) => own.atoms.includes(atom)),
+    );
+  const chosen = at.find(({ couple }) => couple.holdsProton) ?? at[0];
+  if (chosen === undefined) return [];
+  const sd = own.sd ?? OWN_SD;
+  const what = own.origin === 'plan' ? 'measured, as the plan says' : 'measured, from the house file';
+  const sources = own.source === '' ? [] : [own.source];
+  const hop = { what, value: own.value, sd, sources };
+  return [
+    {
+      couple: chosen.index,
+      step: null,
+      constant: { value: own.value, sd, scale: own.scale, origin: own.origin, sources, hops: [hop] },
+    },
+  ];
+}
+
+/** Steps in water from the estimates of all couples and the pull of their charges. */
+function estimatedSteps(perceived: Perceived, graph: Graph, tables: EstimatorTables): ProtonStep[][] {
+  const estimates = perceived.couples.map((couple) => estimateInWater(graph, couple, 1, tables));
+  return perceived.components.map(({ index: component }) => {
+    const places: { readonly site: MicroSite; readonly atom: number }[] = [];
+    const alone: ProtonStep[] = [];
+    perceived.couples.forEach((couple, index) => {
+      const constant = estimates[index];
+      if (couple.component !== component || constant === null || constant === undefined) return;
+      const coupled =
+        LOWEST_COUPLED < constant.value && constant.value < HIGHEST_COUPLED && couple.element !== 'C';
+      if (!coupled) {
+        alone.push({ couple, constant: withStatistics(constant, couple) });
+        return;
+      }
+      for (const atom of couple.equivalents) {
+        places.push({
+          atom,
+          site: { pK: constant.value, kind: couple.kind, couple: index, held: couple.holdsProton },
+        });
+      }
+    });
+    const steps = macroscopicSteps(
+      places.map(({ site }) => site),
+      (first, second) => {
+        const [one, other] = [places[first]!, places[second]!];
+        const opposite = one.site.kind === other.site.kind ? 1 : OPPOSITE_SHARE;
+        return opposite * chargePull(graph, one.atom, other.atom);
+      },
+    ).map(
+      ({ pK, couple }): ProtonStep => ({
+        couple: perceived.couples[couple]!,
+        constant: moved(estimates[couple]!, pK),
+      }),
+    );
+    return [...steps, ...alone].sort((a, b) => a.constant.value - b.constant.value);
+  });
+}
+
+function withStatistics(constant: Constant, couple: Couple): Constant {
+  const shift = Math.log10(couple.equivalents.length) * (couple.kind === 'acid' ? -1 : 1);
+  return shift === 0 ? constant : moved(constant, constant.value + shift);
+}
+
+/** The estimate of a site moved to the step of the whole molecule. */
+function moved(constant: Constant, value: number): Constant {
+  const shift = value - constant.value;
+  if (Math.abs(shift) < 0.005) return constant;
+  const added = PULL_SD * Math.min(2, Math.abs(shift));
+  const hop = {
+    what: 'charges and equal sites of the same molecule',
+    value: shift,
+    sd: added,
+    sources: ['perrin-1981'],
+  };
+  return { ...constant, value, sd: Math.hypot(constant.sd, added), hops: [...constant.hops, hop] };
+}
+
+/** A couple that holds its proton loses it in the lowest of its steps; one that has lost it takes one in the highest. */
+function reported(couple: Couple, steps: readonly ProtonStep[]): Constant | null {
+  const own = steps.filter((step) => step.couple === couple);
+  const step = couple.holdsProton ? own[0] : own.at(-1);
+  return step?.constant ?? null;
+}
