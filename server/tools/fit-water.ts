@@ -5,16 +5,14 @@
  * never used. Prior variances were found by restricted maximum likelihood on the other four fifths; terms seen in
  * fewer than two molecules are left out, so that no single measurement stands in the table.
  */
-import { readFileSync, writeFileSync } from 'node:fs';
-import { parse } from 'csv-parse/sync';
-import { coresOf, frameName } from '../src/chemistry/cores.ts';
+import { writeFileSync } from 'node:fs';
 import { MIDDLE } from '../src/chemistry/estimate.ts';
 import { readSubstituents, type Substituents } from '../src/chemistry/substituents.ts';
 import { type Term, termClass, termsOf } from '../src/chemistry/terms.ts';
-import type { SubstituentRow } from '../src/tables/rows.ts';
 import { type CalibrationRow, familyFits, readCalibration } from './calibration.ts';
 import { fitRidge, type Observation, withoutGroup } from './ridge.ts';
-import { type Rule, type RuleSite, readRules, sitesByRule } from './rule-sites.ts';
+import { type Rule, type RuleSite, readRules, readSubstituentRows, sitesByRule } from './rule-sites.ts';
+import { siteFrame } from './site-frame.ts';
 
 /** Prior variances by class of term. */
 const VARIANCES: Readonly<Record<string, number>> = {
@@ -122,7 +120,7 @@ if (file === undefined) {
   process.exit(2);
 }
 const rules = readRules(`${root}/data/groups.csv`);
-const substituents = readSubstituents(substituentRows(`${root}/data/substituents.csv`));
+const substituents = readSubstituents(readSubstituentRows(`${root}/data/substituents.csv`));
 const rows = readCalibration(file);
 const items = [
   ...rows.flatMap((row) => itemOf(row, substituents)),
@@ -162,7 +160,7 @@ function itemOf(row: CalibrationRow, table: Substituents): Item[] {
     (site): Candidate => ({
       site,
       terms: termsOf(found.graph, site, table),
-      frame: frameOf(found.graph, site),
+      frame: siteFrame(found.graph, site),
     }),
   );
   const byParent = (one: Candidate) => one.site.rule.water ?? MIDDLE;
@@ -186,13 +184,6 @@ function parentOf(rule: Rule, table: Substituents): Item[] {
   };
   const noise = (NOISE[rule.family] ?? 0.15) * (((rule.waterSd ?? 0.8) ** 2 + 0.1) / 0.15);
   return [{ row: null, candidates: [candidate], chosen: candidate, pKa: rule.water, noise }];
-}
-
-function frameOf(graph: Parameters<typeof coresOf>[0], site: RuleSite): string {
-  const core = coresOf(graph, site.atom)[0];
-  return core === undefined || 2 < core.reach
-    ? site.group
-    : `${site.family} ${core.reach} ${frameName(graph, core)}`;
 }
 
 /** The most basic site of a base, the most acidic of an acid. */
@@ -327,22 +318,6 @@ function summary(title: string, errors: readonly (readonly [Item, number])[]): v
   process.stdout.write(
     `${title}: n ${single.length}, mean absolute error ${mean.toFixed(3)}, median ${single[single.length >> 1]!.toFixed(3)}\n`,
   );
-}
-
-function substituentRows(path: string): SubstituentRow[] {
-  const records = parse(readFileSync(path, 'utf8'), { columns: true, bom: true }) as Record<string, string>[];
-  const number = (text: string | undefined) => (text === undefined || text === '' ? null : Number(text));
-  return records.map((row) => ({
-    name: row.name!,
-    smiles: row.smiles!,
-    sigmaM: Number(row.sigma_m),
-    sigmaP: Number(row.sigma_p),
-    sigmaPMinus: number(row.sigma_p_minus),
-    sigmaPPlus: number(row.sigma_p_plus),
-    sources: [row.sources!],
-    basis: 'recalled',
-    note: row.note!,
-  }));
 }
 
 function rounded(value: number): number {

@@ -6,7 +6,7 @@
 import { readFileSync } from 'node:fs';
 import { parse } from 'csv-parse/sync';
 import { buildGraph } from '../src/chemistry/build-graph.ts';
-import type { ParentRow } from '../src/chemistry/estimate.ts';
+import type { EstimatorTables, ParentRow } from '../src/chemistry/estimate.ts';
 import type { Graph } from '../src/chemistry/graph.ts';
 import { matchSites } from '../src/chemistry/match.ts';
 import { neutralForm } from '../src/chemistry/neutral.ts';
@@ -14,6 +14,7 @@ import { type Pattern, parseSmarts } from '../src/chemistry/smarts.ts';
 import { readSmiles } from '../src/chemistry/smiles.ts';
 import type { Site } from '../src/chemistry/terms.ts';
 import { symmetryClasses } from '../src/chemistry/toolkit.ts';
+import type { SubstituentRow } from '../src/tables/rows.ts';
 
 export interface Rule extends ParentRow {
   readonly kind: 'acid' | 'base';
@@ -29,9 +30,7 @@ export interface RuleSite extends Site {
 }
 
 export function readRules(file: string): Rule[] {
-  const records = parse(readFileSync(file, 'utf8'), { columns: true, bom: true }) as Record<string, string>[];
-  const number = (text: string | undefined) => (text === undefined || text === '' ? null : Number(text));
-  return records.map((row) => ({
+  return records(file).map((row) => ({
     id: row.id!,
     name: row.name!,
     kind: row.kind === 'base' ? 'base' : 'acid',
@@ -81,4 +80,45 @@ export function sitesByRule(
     equivalents: count,
   }));
   return { graph, sites };
+}
+
+export function readSubstituentRows(file: string): SubstituentRow[] {
+  return records(file).map((row) => ({
+    name: row.name!,
+    smiles: row.smiles!,
+    sigmaM: Number(row.sigma_m),
+    sigmaP: Number(row.sigma_p),
+    sigmaPMinus: number(row.sigma_p_minus),
+    sigmaPPlus: number(row.sigma_p_plus),
+    sources: row.sources!.split(';'),
+    basis: row.basis === 'checked' ? 'checked' : 'recalled',
+    note: row.note!,
+  }));
+}
+
+/** The estimator's tables straight from their files. */
+export function readEstimatorTables(folder: string, groups: readonly Rule[]): EstimatorTables {
+  return {
+    groups,
+    substituents: readSubstituentRows(`${folder}/substituents.csv`),
+    terms: records(`${folder}/terms.csv`).map((row) => ({
+      name: row.name!,
+      value: Number(row.value),
+      n: Number(row.n),
+    })),
+    spreads: records(`${folder}/spreads.csv`).map((row) => ({
+      kind: row.kind === 'family' ? 'family' : 'term',
+      name: row.name!,
+      value: Number(row.value),
+      n: Number(row.n),
+    })),
+  };
+}
+
+function records(file: string): Record<string, string>[] {
+  return parse(readFileSync(file, 'utf8'), { columns: true, bom: true }) as Record<string, string>[];
+}
+
+function number(text: string | undefined): number | null {
+  return text === undefined || text === '' ? null : Number(text);
 }
