@@ -9,7 +9,7 @@ import { existsSync } from 'node:fs';
 import { join } from 'node:path';
 import { estimateInWater } from '../src/chemistry/estimate.ts';
 import { type CalibrationRow, familyFits, readCalibration } from './calibration.ts';
-import { readEstimatorTables, readRules, sitesByRule } from './rule-sites.ts';
+import { moleculeKey, readEstimatorTables, readParents, readRules, sitesByRule } from './rule-sites.ts';
 import { siteFrame } from './site-frame.ts';
 
 interface Judged {
@@ -28,8 +28,10 @@ if (!existsSync(file)) {
 }
 const rules = readRules(join(root, 'data/groups.csv'));
 const tables = readEstimatorTables(join(root, 'data'), rules);
+// Molecules whose published constant the fit has used cannot judge it.
+const used = new Set(readParents(join(root, 'data/frames.csv')).map(({ smiles }) => moleculeKey(smiles)));
 const judged = readCalibration(file)
-  .filter(({ singleSite }) => singleSite)
+  .filter(({ singleSite, heldOut, smiles }) => singleSite && !(heldOut && used.has(moleculeKey(smiles))))
   .map(judge);
 const seen = new Set(judged.filter(({ row }) => !row.heldOut).map(({ frame }) => frame));
 const aside = judged.filter(({ row }) => row.heldOut);

@@ -11,7 +11,15 @@ import { readSubstituents, type Substituents } from '../src/chemistry/substituen
 import { type Term, termClass, termsOf } from '../src/chemistry/terms.ts';
 import { type CalibrationRow, familyFits, readCalibration } from './calibration.ts';
 import { fitRidge, type Observation, withoutGroup } from './ridge.ts';
-import { type Rule, type RuleSite, readRules, readSubstituentRows, sitesByRule } from './rule-sites.ts';
+import {
+  type ParentValue,
+  type Rule,
+  type RuleSite,
+  readParents,
+  readRules,
+  readSubstituentRows,
+  sitesByRule,
+} from './rule-sites.ts';
 import { siteFrame } from './site-frame.ts';
 
 /** Prior variances by class of term. */
@@ -35,6 +43,7 @@ const VARIANCES: Readonly<Record<string, number>> = {
   bend: 0.03,
   bendany: 0.001,
   crowd: 0.025,
+  bay: 0.15,
   fused: 0.2,
   'fused-any': 0.06,
   tied: 0.004,
@@ -125,6 +134,7 @@ const rows = readCalibration(file);
 const items = [
   ...rows.flatMap((row) => itemOf(row, substituents)),
   ...rules.flatMap((rule) => parentOf(rule, substituents)),
+  ...readParents(`${root}/data/frames.csv`).flatMap((parent) => publishedOf(parent, substituents)),
 ];
 const fitted = items.filter(({ row }) => row === null || !row.heldOut);
 
@@ -184,6 +194,26 @@ function parentOf(rule: Rule, table: Substituents): Item[] {
   };
   const noise = (NOISE[rule.family] ?? 0.15) * (((rule.waterSd ?? 0.8) ** 2 + 0.1) / 0.15);
   return [{ row: null, candidates: [candidate], chosen: candidate, pKa: rule.water, noise }];
+}
+
+/** A published constant of a marked site. */
+function publishedOf({ smiles, kind, pKa, sd }: ParentValue, table: Substituents): Item[] {
+  const found = sitesByRule(smiles, rules);
+  const site = found?.sites.find((one) => one.kind === kind && one.marked);
+  if (found === null || site === undefined) {
+    process.stdout.write(`no rule finds the marked site of ${smiles}\n`);
+    return [];
+  }
+  const candidate = { site, terms: termsOf(found.graph, site, table), frame: 'published' };
+  return [
+    {
+      row: null,
+      candidates: [candidate],
+      chosen: candidate,
+      pKa,
+      noise: Math.max(NOISE[site.family] ?? 0.15, sd ** 2),
+    },
+  ];
 }
 
 /** The most basic site of a base, the most acidic of an acid. */

@@ -13,7 +13,7 @@ import { neutralForm } from '../src/chemistry/neutral.ts';
 import { type Pattern, parseSmarts } from '../src/chemistry/smarts.ts';
 import { readSmiles } from '../src/chemistry/smiles.ts';
 import type { Site } from '../src/chemistry/terms.ts';
-import { symmetryClasses } from '../src/chemistry/toolkit.ts';
+import { canonicalKey, symmetryClasses } from '../src/chemistry/toolkit.ts';
 import type { SubstituentRow } from '../src/tables/rows.ts';
 
 export interface Rule extends ParentRow {
@@ -27,6 +27,8 @@ export interface Rule extends ParentRow {
 export interface RuleSite extends Site {
   readonly rule: Rule;
   readonly equivalents: number;
+  /** Whether a mark :1 stands on this site or its equals. */
+  readonly marked: boolean;
 }
 
 export function readRules(file: string): Rule[] {
@@ -43,6 +45,32 @@ export function readRules(file: string): Rule[] {
     model: row.model!,
     sources: row.sources!.split(';'),
   }));
+}
+
+/** A published constant of a parent molecule, its site marked. */
+export interface ParentValue {
+  readonly smiles: string;
+  readonly kind: 'acid' | 'base';
+  readonly pKa: number;
+  readonly sd: number;
+}
+
+export function readParents(file: string): ParentValue[] {
+  return records(file).map((row) => ({
+    smiles: row.smiles!,
+    kind: row.kind === 'base' ? 'base' : 'acid',
+    pKa: Number(row.water),
+    sd: Number(row.water_sd),
+  }));
+}
+
+/** One name for one molecule, however it is written. */
+export function moleculeKey(smiles: string): string {
+  const { structure } = readSmiles(smiles);
+  const built = structure === undefined ? undefined : buildGraph(structure);
+  if (built?.graph === undefined) return smiles;
+  const { graph } = neutralForm(built.graph);
+  return graph.fragments.map((fragment) => canonicalKey(graph, fragment) ?? '?').join(' ');
 }
 
 /** One site for each class of equivalent atoms; null where the text cannot be read. */
@@ -71,6 +99,9 @@ export function sitesByRule(
     const known = groups.get(key);
     groups.set(key, known === undefined ? { atom, rule, count: 1 } : { ...known, count: known.count + 1 });
   }
+  const marked = new Set(
+    graph.atoms.filter(({ mapNumber }) => mapNumber === 1).map(({ index }) => classes.get(index)),
+  );
   const sites = [...groups.values()].map(({ atom, rule, count }) => ({
     atom,
     kind: rule.kind,
@@ -78,6 +109,7 @@ export function sitesByRule(
     family: rule.family,
     rule,
     equivalents: count,
+    marked: marked.has(classes.get(atom)),
   }));
   return { graph, sites };
 }

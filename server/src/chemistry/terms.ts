@@ -77,7 +77,7 @@ export function termsOf(graph: Graph, site: Site, substituents: Substituents): T
   add(`group:${site.group}`, 1);
   for (const depth of [1, 3]) add(`near${depth}:${site.kind[0]}${unfolded(graph, site.atom, -1, depth)}`, 1);
   const cores = coresOf(graph, site.atom);
-  for (const core of cores) addCore(graph, core, series, substituents, add);
+  for (const core of cores) addCore(graph, site, core, series, substituents, add);
   addAcceptors(graph, site, series, add);
   addChain(graph, site, series, answer, cores, add);
   addRings(graph, site, series, add);
@@ -88,16 +88,24 @@ export function termsOf(graph: Graph, site: Site, substituents: Substituents): T
 type Add = (name: string, factor: number) => void;
 
 /** Ring atoms, fused rings and substituents of one ring system. */
-function addCore(graph: Graph, core: Core, series: string, substituents: Substituents, add: Add): void {
+function addCore(
+  graph: Graph,
+  site: Site,
+  core: Core,
+  series: string,
+  substituents: Substituents,
+  add: Add,
+): void {
   const response = REACH_RESPONSE[core.reach] ?? 0.12;
   const line = `${series}.${core.reach}`;
   const kinds = atomKinds(graph);
   let total = 0;
+  const nearest = core.reach === 1 ? kinds[site.atom]! : '';
   const ortho: string[] = [];
   add(`frameany:${frameName(graph, core)}.${core.reach === 0 ? 'in' : 'on'}`, response);
   for (const [atom, place] of core.places) {
     const kind = kinds[atom]!;
-    if (kind !== 'c' && !kind.startsWith('c=')) {
+    if (kind !== 'c') {
       add(`aza:${line}.${place}.${kind}`, 1);
       add(`aza:*.${place}.${kind}`, response);
     }
@@ -112,7 +120,10 @@ function addCore(graph: Graph, core: Core, series: string, substituents: Substit
       addSigma(sigma, standing, add);
       addSubstituent(graph, atom, next, standing, add);
       total += place === 'm' || place[2] === 'n' ? sigma.m : sigma.p;
-      if (place === 'o') ortho.push(kinds[next]!);
+      if (place === 'o') {
+        ortho.push(kinds[next]!);
+        addBay(kinds[next]!, nearest, line, add);
+      }
     }
   }
   add(`bend:${line}`, total * Math.abs(total));
@@ -128,6 +139,13 @@ interface Standing {
   readonly place: string;
   readonly line: string;
   readonly response: number;
+}
+
+/** An ortho neighbour beside a nitrogen that may carry alkyl groups: they turn it out of the ring's plane. */
+function addBay(kind: string, nearest: string, line: string, add: Add): void {
+  if (!/^N[0-2]$/.test(nearest)) return;
+  add(`bay:${line}.${nearest}`, 1);
+  add(`bay:${line}.${nearest}.${kind}`, 1);
 }
 
 /** Resonance class of a place: ortho, meta, para, beside, across, or reached or not reached across a fusion. */
