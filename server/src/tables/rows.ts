@@ -186,3 +186,75 @@ export interface SpreadRow {
   readonly value: number;
   readonly n: number;
 }
+
+/** Which protons on carbon (and some on nitrogen) move at all, and what wakes them; the first row that fits holds. */
+export interface KineticsRow extends Sourced {
+  readonly id: string;
+  /** leaves: the site is to lose its proton; arrives: it is to take one. */
+  readonly direction: 'leaves' | 'arrives';
+  /** Ids of groups; empty where `families` decides. */
+  readonly groups: readonly string[];
+  readonly families: readonly string[];
+  /** `role:ROLE` or `reagent:NAME` of a base in the flask, any one of them; empty where any base will do. */
+  readonly bases: readonly string[];
+  /** The same of a helper that must be there besides the base. */
+  readonly helpers: readonly string[];
+  /** °C from which the row holds. */
+  readonly above: number | null;
+  readonly rate: 'instant' | 'slow' | 'dead';
+  readonly note: string;
+}
+
+/** Enthalpy of giving up a proton in water at 25 °C, kJ/mol. */
+export interface EnthalpyRow extends Sourced {
+  readonly id: string;
+  readonly groups: readonly string[];
+  readonly families: readonly string[];
+  readonly kind: 'acid' | 'base';
+  /** Which proton of the molecule, from 1; null for any. */
+  readonly step: number | null;
+  readonly enthalpy: number;
+  readonly sd: number;
+  /** kJ/(mol K) */
+  readonly heatCapacity: number | null;
+  readonly note: string;
+}
+
+/** A form that leaves the flask as a gas once the liquid holds as much as it can at 1 atm. */
+export interface GasRow extends Sourced {
+  readonly name: string;
+  readonly groups: readonly string[];
+  /** Protons that the leaving form carries. */
+  readonly protons: number;
+  /** mol/L at 25 °C and 1 atm; null where it stays dissolved or no figure is at hand. */
+  readonly water: number | null;
+  readonly organic: number | null;
+  readonly note: string;
+}
+
+/** A reagent that takes protons without a couple that its structure would show. */
+export interface HydrideRow extends Sourced {
+  readonly id: string;
+  /** `reagent:NAME` or `role:ROLE`; the first row that fits holds. */
+  readonly reagent: string;
+  /** Protons that one mol takes up where the reagent's own row does not say. */
+  readonly capacity: number;
+  /** Highest pKa of an acid that eats it, in practice, on both scales. */
+  readonly water: number | null;
+  readonly dmso: number | null;
+  readonly sd: number;
+  /** Takes protons from carbon too. */
+  readonly carbon: boolean;
+  readonly gas: string;
+  readonly note: string;
+}
+
+/** Heat of a class of reactions, kJ for each mol of proton or reagent; negative where heat is set free. */
+export interface HeatRow extends Sourced {
+  readonly id: string;
+  /** `role:ROLE`, `reagent:NAME` or `class:NAME`. */
+  readonly what: string;
+  readonly heat: number;
+  readonly sd: number;
+  readonly note: string;
+}

@@ -1,0 +1,459 @@
+/**
+ * Judges one proton transfer: does this site lose (take) its proton in this flask, how far, and how sure is that.
+ *
+ * The one place where direction is decided; every check reads its answer.
+ * Knows: solved flasks, allowances.  Must not know: findings, text.
+ * Units: mol; log K decimal; probability of an extent below half of what the amounts allow.
+ * Invariants:
+ *  1. A stronger base never lowers the extent.                              (tests/flask/judge.test.ts)
+ *  2. Scaling all amounts and volumes leaves the verdict.                   (same)
+ *  3. A wider sd of a constant never makes a verdict surer.                 (same)
+ */
+import type { Constant, Couple, Perceived, ProtonStep } from '../chemistry/couple.ts';
+import type { Tables } from '../tables/tables.ts';
+import { endSite, STEADY_FROM } from './allowances/intent.ts';
+import { formsIonPair, LEAST_ION_PAIR_SD } from './allowances/ion-pair.ts';
+import { isHelpedByMetal } from './allowances/lewis-acid.ts';
+import { hasPhaseTransfer } from './allowances/phase-transfer.ts';
+import { HIGHEST_PH, LOWEST_PH, solveBalance, stepShares } from './balance.ts';
+import { rateOf } from './kinetics.ts';
+import { isSolidBase, mediumOf } from './medium.ts';
+import { normalBelow } from './numbers.ts';
+import { chargedShare, type Solved, solveContents, solveSystem } from './solve.ts';
+import type { Allowance, ConstantsIn, Contents, Ingredient, Site, Verdict } from './state.ts';
+import type { FlaskAcid, FlaskSystem } from './system.ts';
+import { differenceSd } from './uncertainty.ts';
+
+export interface Intent {
+  readonly ingredient: number;
+  /** Indices into the molecule's couples, any of which will do; empty for whichever the flask takes. */
+  readonly couples: readonly number[];
+  readonly direction: 'deprotonate' | 'protonate';
+  /** A conversion after it uses up what forms. */
+  readonly isConsumed?: boolean;
+  /** What that conversion makes. */
+  readonly product?: Perceived | null;
+}
+
+export interface VerdictThresholds {
+  readonly error: number;
+  readonly warning: number;
+  readonly undecided: number;
+}
+
+const THRESHOLDS: VerdictThresholds = { error: 0.95, warning: 0.8, undecided: 0.2 };
+/** Share of the site's amount from which a base counts as the one that acts. */
+const ACTING_SHARE = 0.05;
+/** Bases this much weaker than the acting one do not count as capacity. */
+const CAPACITY_SPAN = 4;
+const HALF = 0.5;
+/** Where a metal or a phase-transfer catalyst helps, a failure is no surer than this. */
+const MOST_DOUBT = 0.5;
+/** Nothing in the flask takes the proton: as far uphill as the scale reaches. */
+const NO_PARTNER = -40;
+
+/**
+ * The verdict on one intended transfer; null where the molecule has no such couple with a constant.
+ *
+ * @param thresholds from which probability of failure the answer is no, and undecided
+ */
+export function judgeTransfer(
+  contents: Contents,
+  intent: Intent,
+  tables: Tables,
+  constantsIn: ConstantsIn,
+  thresholds: VerdictThresholds = THRESHOLDS,
+): Verdict | null {
+  const one = contents.ingredients.find(({ id }) => id === intent.ingredient);
+  if (one?.molecule == null) return null;
+  const meant = chooseCouple(one, intent, contents, tables, constantsIn);
+  if (meant === null) return null;
+  const placed = placeSite(contents, one, meant, intent, tables, constantsIn);
+  if (placed === null) return null;
+  return weigh(placed, intent, tables, constantsIn, thresholds);
+}
+
+/** The answer that a probability of failure stands for. */
+export function answerFor(
+  probability: number,
+  thresholds: VerdictThresholds = THRESHOLDS,
+): Verdict['answer'] {
+  if (thresholds.warning <= probability) return 'no';
+  return thresholds.undecided <= probability ? 'undecided' : 'yes';
+}
+
+/** A flask with the judged site in it and without it. */
+interface Placed {
+  readonly contents: Contents;
+  readonly one: Ingredient;
+  readonly site: ProtonStep;
+  readonly amount: number;
+  /** Where the site's step stands in `full`. */
+  readonly acid: number;
+  readonly step: number;
+  readonly full: Solved;
+  /** The same flask with the site's proton held fast where it was charged. */
+  readonly rest: Solved;
+}
+
+/** Among the couples that will do, the one that moves most easily. */
+function chooseCouple(
+  { molecule, own }: Ingredient,
+  { couples, direction }: Intent,
+  contents: Contents,
+  tables: Tables,
+  constantsIn: ConstantsIn,
+): Couple | null {
+  const { scale } = mediumOf(contents);
+  const known = constantsIn(molecule!, scale, tables, own ? { own } : {}).couples;
+  const loses = direction === 'deprotonate';
+  let best: { couple: Couple; value: number } | null = null;
+  const candidates = couples.length === 0 ? molecule!.couples.map((_, place) => place) : couples;
+  for (const place of candidates) {
+    const couple = molecule!.couples[place];
+    const constant = known[place];
+    if (couple === undefined || constant == null) continue;
+    // Unless a site is named, only one that can still move is meant.
+    if (couples.length === 0 && couple.holdsProton !== loses) continue;
+    const isEasier = best === null || (loses ? constant.value < best.value : best.value < constant.value);
+    if (isEasier) best = { couple, value: constant.value };
+  }
+  return (best as { couple: Couple } | null)?.couple ?? null;
+}
+
+function placeSite(
+  contents: Contents,
+  one: Ingredient,
+  couple: Couple,
+  intent: Intent,
+  tables: Tables,
+  constantsIn: ConstantsIn,
+): Placed | null {
+  const participation = { intended: [{ ingredient: one.id, couple }] };
+  const first = solveContents(contents, tables, constantsIn, participation);
+  const system = withSite(first, one, couple, intent, tables, constantsIn);
+  if (system === null) return null;
+  const full = system === first.system ? first : solveSystem(contents, first.medium, system);
+  const acid = system.acids.findIndex(
+    (candidate) => candidate.ingredient === one.id && stepOf(candidate, couple, intent) !== -1,
+  );
+  if (acid === -1) return null;
+  const step = stepOf(system.acids[acid]!, couple, intent);
+  const rest = solveSystem(contents, first.medium, withoutStep(system, acid, step));
+  return {
+    contents,
+    one,
+    site: system.acids[acid]!.steps[step]!,
+    amount: system.acids[acid]!.amount,
+    acid,
+    step,
+    full,
+    rest,
+  };
+}
+
+/** The step of an acid that a couple stands for: among several the one that moves next. */
+function stepOf(acid: FlaskAcid, couple: Couple, { direction }: Intent): number {
+  const places = acid.steps.flatMap((step, place) => (isSame(step.couple, couple) ? [place] : []));
+  if (places.length === 0) return -1;
+  const loses = direction === 'deprotonate';
+  const ready = places.filter((place) => HALF < chargedShare(acid, place) === loses);
+  const open = ready.length === 0 ? places : ready;
+  return loses ? open[0]! : open.at(-1)!;
+}
+
+function isSame(a: Couple, b: Couple): boolean {
+  return (
+    a.kind === b.kind && a.component === b.component && (a.atom === b.atom || a.equivalents.includes(b.atom))
+  );
+}
+
+/** The system with a step for the couple; a couple that is no step of its own gets one with its own constant. */
+function withSite(
+  { system, medium }: Solved,
+  { id, molecule, own, mol }: Ingredient,
+  couple: Couple,
+  intent: Intent,
+  tables: Tables,
+  constantsIn: ConstantsIn,
+): FlaskSystem | null {
+  if (system.acids.some((acid) => acid.ingredient === id && stepOf(acid, couple, intent) !== -1))
+    return system;
+  const constants = constantsIn(molecule!, medium.scale, tables, own ? { own } : {}).couples;
+  const constant = constants[molecule!.couples.indexOf(couple)];
+  if (constant == null) return null;
+  const place = system.acids.findIndex(
+    (acid) => acid.ingredient === id && acid.component === couple.component,
+  );
+  const held = couple.holdsProton ? 1 : 0;
+  const before: FlaskAcid = system.acids[place] ?? {
+    ingredient: id,
+    component: couple.component,
+    steps: [],
+    shifts: [],
+    amount: mol,
+    protonsCharged: 0,
+    fullCharge: molecule!.components[couple.component]?.charge ?? 0,
+    gas: null,
+    isSolvent: false,
+  };
+  const at = before.steps.filter((step) => step.constant.value <= constant.value).length;
+  const after: FlaskAcid = {
+    ...before,
+    steps: [...before.steps.slice(0, at), { couple, constant }, ...before.steps.slice(at)],
+    shifts: [...before.shifts.slice(0, at), 0, ...before.shifts.slice(at)],
+    protonsCharged: before.protonsCharged + held,
+    fullCharge: before.fullCharge + 1 - held,
+  };
+  const acids = [...system.acids];
+  if (place === -1) acids.push(after);
+  else acids[place] = after;
+  return { ...system, acids };
+}
+
+function withoutStep(system: FlaskSystem, acid: number, step: number): FlaskSystem {
+  const before = system.acids[acid]!;
+  const held = chargedShare(before, step);
+  const drop = <T>(list: readonly T[]) => list.filter((_, place) => place !== step);
+  const after: FlaskAcid = {
+    ...before,
+    steps: drop(before.steps),
+    shifts: drop(before.shifts),
+    protonsCharged: before.protonsCharged - held,
+    fullCharge: before.fullCharge - 1 + held,
+    gas: null,
+  };
+  return { ...system, acids: system.acids.map((one, place) => (place === acid ? after : one)) };
+}
+
+/** A couple on the other side of the transfer, with what it can take (give). */
+interface Candidate {
+  readonly site: Site;
+  readonly able: number;
+  readonly isSolvent: boolean;
+}
+
+function weigh(
+  placed: Placed,
+  intent: Intent,
+  tables: Tables,
+  constantsIn: ConstantsIn,
+  thresholds: VerdictThresholds,
+): Verdict {
+  const { contents, rest, one, amount } = placed;
+  const { medium } = rest;
+  const loses = intent.direction === 'deprotonate';
+  const allowances: Allowance[] = [];
+  const candidates = candidatesIn(placed, loses);
+  const partner = partnerOf(candidates, amount, loses);
+  const site: Site = { ingredient: one.id, ...pick(placed.site) };
+  const rate = rateOf(site.couple, loses ? 'leaves' : 'arrives', contents, tables);
+  const base = { site, scale: medium.scale, kinetics: rate };
+  const charged = chargedShare(placed.full.system.acids[placed.acid]!, placed.step);
+  if (loses ? charged < HALF : HALF < charged) allowances.push('already');
+  if (partner === null) {
+    const extent = extentOf(placed.full, placed, loses);
+    const sd = differenceSd(site, site, medium.scaleSd);
+    const sure = allowances.includes('already') ? 1 - extent : 1;
+    return {
+      ...base,
+      answer: answerFor(sure, thresholds),
+      logK: NO_PARTNER,
+      sd,
+      extent,
+      probability: sure,
+      partner,
+      allowances,
+      borrowed: false,
+      capacity: 0,
+      net: null,
+    };
+  }
+  const pair = compare(site, partner, placed, loses, tables, constantsIn);
+  allowances.push(...pair.allowances);
+  const { shift } = pair;
+  const extent = shift === 0 ? extentOf(placed.full, placed, loses) : extentShifted(placed, shift, loses);
+  const capacity = capacityOf(candidates, partner, loses) / amount;
+  if (capacity < 1 && !allowances.includes('already')) allowances.push('stoichiometric');
+  const margin = marginOf(placed, shift, capacity, loses);
+  const plain = normalBelow(-margin / pair.sd);
+  if (medium.organic !== null) allowances.push('phases');
+  if (rate !== 'instant' && loses) allowances.push('slow');
+  if (isLevelled(placed, loses)) allowances.push('levelled');
+  if (placed.full.left.some((left) => 0 < left)) allowances.push('gas');
+  let probability = allowances.includes('already') ? Math.min(plain, 1 - extent) : plain;
+  let answer = answerFor(probability, thresholds);
+  if (loses && answer === 'no') {
+    if (isHelpedByMetal(partner.couple, contents)) allowances.push('lewis-acid');
+    if (medium.organic !== null && hasPhaseTransfer(contents)) allowances.push('phase-transfer');
+    if (allowances.includes('lewis-acid') || allowances.includes('phase-transfer')) {
+      probability = Math.min(probability, MOST_DOUBT);
+      answer = 'undecided';
+    }
+  }
+  const net = loses && answer !== 'yes' ? netOf(intent, partner, placed, tables, constantsIn) : null;
+  if (net !== null) {
+    allowances.push('net-reaction');
+    answer = 'yes';
+  } else if (loses && answer !== 'yes' && intent.isConsumed && STEADY_FROM <= pair.logK) {
+    allowances.push('steady-amount');
+    answer = 'yes';
+  }
+  const ownSd = differenceSd(site, partner, 0);
+  const borrowed =
+    0 < medium.scaleSd &&
+    answerFor(normalBelow(-margin / Math.max(ownSd, 1e-9)), thresholds) !== answerFor(plain, thresholds);
+  return {
+    ...base,
+    answer,
+    logK: pair.logK,
+    sd: pair.sd,
+    extent,
+    probability,
+    partner,
+    allowances,
+    borrowed,
+    capacity,
+    net,
+  };
+}
+
+function pick({ couple, constant }: ProtonStep): { couple: Couple; constant: Constant } {
+  return { couple, constant };
+}
+
+/** Every other couple that can take (give) the proton, as it stands before the site takes part. */
+function candidatesIn({ rest }: Placed, loses: boolean): Candidate[] {
+  const { system, shares } = rest;
+  return system.acids.flatMap(({ ingredient, steps, amount, isSolvent }, place) =>
+    steps.map(({ couple, constant }, step) => {
+      const held = shares[place]![step]!;
+      return {
+        site: { ingredient, couple, constant },
+        able: amount * (loses ? 1 - held : held),
+        isSolvent,
+      };
+    }),
+  );
+}
+
+/** The strongest base (acid) that is there in an amount that matters; the strongest of all where none is. */
+function partnerOf(candidates: readonly Candidate[], amount: number, loses: boolean): Site | null {
+  const byStrength = [...candidates].sort((a, b) =>
+    loses ? b.site.constant.value - a.site.constant.value : a.site.constant.value - b.site.constant.value,
+  );
+  const acting = byStrength.find(({ able }) => ACTING_SHARE * amount <= able);
+  if (acting !== undefined) return acting.site;
+  const strength = ({ able, site }: Candidate) =>
+    Math.log10(Math.max(able, Number.MIN_VALUE)) + (loses ? site.constant.value : -site.constant.value);
+  const best = byStrength.reduce<Candidate | null>(
+    (most, next) => (0 < next.able && (most === null || strength(most) < strength(next)) ? next : most),
+    null,
+  );
+  return best?.site ?? null;
+}
+
+/** mol of proton that bases (acids) about as strong as the acting one can move. */
+function capacityOf(candidates: readonly Candidate[], partner: Site, loses: boolean): number {
+  const limit = partner.constant.value + (loses ? -CAPACITY_SPAN : CAPACITY_SPAN);
+  return candidates.reduce((sum, { site, able }) => {
+    const counts = loses ? limit <= site.constant.value : site.constant.value <= limit;
+    return counts ? sum + able : sum;
+  }, 0);
+}
+
+/** log K of the pair and its sd, by the scale or, where the two form an ion pair, by their difference in water. */
+function compare(
+  site: Site,
+  partner: Site,
+  { contents, rest }: Placed,
+  loses: boolean,
+  tables: Tables,
+  constantsIn: ConstantsIn,
+): { logK: number; sd: number; shift: number; allowances: Allowance[] } {
+  const { medium } = rest;
+  const allowances: Allowance[] = [];
+  const [acid, base] = loses ? [site, partner] : [partner, site];
+  const plain = base.constant.value - acid.constant.value;
+  const sd = differenceSd(site, partner, medium.scaleSd);
+  const other = contents.ingredients.find(({ id }) => id === partner.ingredient);
+  if (other !== undefined && isSolidBase(other) && !medium.protic) allowances.push('surface');
+  if (!formsIonPair(acid.couple, base.couple, medium)) return { logK: plain, sd, shift: 0, allowances };
+  const inWater = (one: Site) => {
+    const ingredient = contents.ingredients.find(({ id }) => id === one.ingredient)!;
+    const { couples } = constantsIn(
+      ingredient.molecule!,
+      'water',
+      tables,
+      ingredient.own ? { own: ingredient.own } : {},
+    );
+    return couples[ingredient.molecule!.couples.indexOf(one.couple)] ?? null;
+  };
+  const [acidInWater, baseInWater] = [inWater(acid), inWater(base)];
+  if (acidInWater === null || baseInWater === null) return { logK: plain, sd, shift: 0, allowances };
+  allowances.push('ion-pair');
+  const logK = baseInWater.value - acidInWater.value;
+  const pairSd = Math.hypot(acidInWater.sd, baseInWater.sd);
+  return { logK, sd: Math.max(LEAST_ION_PAIR_SD, pairSd), shift: logK - plain, allowances };
+}
+
+/** Share of the site that has moved at the answer of the whole flask. */
+function extentOf({ shares }: Solved, { acid, step }: Placed, loses: boolean): number {
+  const held = shares[acid]![step]!;
+  return loses ? 1 - held : held;
+}
+
+/** The extent with the site's constant moved so that its log K with the partner grows by `shift`. */
+function extentShifted(placed: Placed, shift: number, loses: boolean): number {
+  const { full, acid, step } = placed;
+  const acids = full.acids.map((one, place) => {
+    if (place !== acid) return one;
+    const pKa = one.pKa.map((value, at) => (at === step ? value + (loses ? -shift : shift) : value));
+    return { ...one, pKa };
+  });
+  const { pH } = solveBalance(acids);
+  const held = stepShares(acids[acid]!.pKa, pH)[step]!;
+  return loses ? 1 - held : held;
+}
+
+/** How many units log K may lose until the extent falls to half of what the amounts allow; negative once it has. */
+function marginOf(placed: Placed, shift: number, capacity: number, loses: boolean): number {
+  const { rest, full, acid, step, amount } = placed;
+  const target = HALF * Math.min(1, capacity);
+  if (target <= 0) return NO_PARTNER;
+  const charged = chargedShare(full.system.acids[acid]!, step);
+  const moved = loses ? charged - (1 - target) : target - charged;
+  const { pH } = solveBalance(rest.acids, (loses ? moved : -moved) * amount);
+  if (pH <= LOWEST_PH + HALF || HIGHEST_PH - HALF <= pH) return pH < 0 === loses ? NO_PARTNER : -NO_PARTNER;
+  const pKa = full.acids[acid]!.pKa[step]! + (loses ? -shift : shift);
+  const odds = Math.log10(target / (1 - target));
+  return loses ? pH - pKa - odds : pKa - pH - odds;
+}
+
+/** Whether the solvent took over what a stronger reagent brought: its own ion is what acts. */
+function isLevelled({ rest }: Placed, loses: boolean): boolean {
+  const place = rest.system.acids.findIndex(({ isSolvent }) => isSolvent);
+  if (place === -1) return false;
+  const { steps, amount } = rest.system.acids[place]!;
+  const own = steps.findIndex(({ couple }) => couple.kind === (loses ? 'acid' : 'base'));
+  if (own === -1) return false;
+  const held = rest.shares[place]![own]!;
+  return LEVELLED_SHARE * rest.medium.volume < amount * (loses ? 1 - held : held);
+}
+
+/** mol/L of a solvent's own ion that cannot come from its autoprotolysis. */
+const LEVELLED_SHARE = 1e-3;
+
+function netOf(
+  { product, isConsumed }: Intent,
+  partner: Site,
+  { rest }: Placed,
+  tables: Tables,
+  constantsIn: ConstantsIn,
+): Verdict['net'] {
+  if (!isConsumed || product == null) return null;
+  const { couples } = constantsIn(product, rest.medium.scale, tables);
+  const end = endSite(product.couples, couples, partner.constant.value);
+  if (end === null) return null;
+  return { logK: partner.constant.value - end.constant.value, site: { ingredient: -1, ...end } };
+}

@@ -1,0 +1,73 @@
+/**
+ * Who gave protons to whom: the difference between what was charged and what came out, settled from the strongest acid and
+ * base downwards.
+ *
+ * Knows: solved flasks.  Must not know: intended transfers, findings.
+ * Units: mol.
+ * Invariant: what is given equals what is taken, and no entry exceeds what its couple moved.   (tests/flask/ledger.test.ts)
+ */
+import { chargedShare, type Solved } from './solve.ts';
+import type { Site } from './state.ts';
+
+export interface Transfer {
+  readonly from: Site;
+  readonly to: Site;
+  readonly mol: number;
+  readonly fromSolvent: boolean;
+  readonly toSolvent: boolean;
+}
+
+interface Account {
+  readonly site: Site;
+  readonly isSolvent: boolean;
+  mol: number;
+}
+
+/** Transfers of more than this share of the largest are kept. */
+const LEAST_SHARE = 1e-9;
+
+/** All transfers of a solved flask, the strongest acid and base first. */
+export function ledgerOf({ system, shares }: Solved): Transfer[] {
+  const givers: Account[] = [];
+  const takers: Account[] = [];
+  system.acids.forEach((acid, place) => {
+    acid.steps.forEach(({ couple, constant }, step) => {
+      const moved = acid.amount * (shares[place]![step]! - chargedShare(acid, step));
+      const account: Account = {
+        site: { ingredient: acid.ingredient, couple, constant },
+        isSolvent: acid.isSolvent,
+        mol: Math.abs(moved),
+      };
+      if (moved < 0) givers.push(account);
+      if (0 < moved) takers.push(account);
+    });
+  });
+  givers.sort((a, b) => a.site.constant.value - b.site.constant.value);
+  takers.sort((a, b) => b.site.constant.value - a.site.constant.value);
+  return settle(givers, takers);
+}
+
+function settle(givers: readonly Account[], takers: readonly Account[]): Transfer[] {
+  const largest = Math.max(0, ...givers.map(({ mol }) => mol), ...takers.map(({ mol }) => mol));
+  const transfers: Transfer[] = [];
+  let next = 0;
+  for (const giver of givers) {
+    while (0 < giver.mol && next < takers.length) {
+      const taker = takers[next]!;
+      const mol = Math.min(giver.mol, taker.mol);
+      if (LEAST_SHARE * largest < mol) {
+        transfers.push({
+          from: giver.site,
+          to: taker.site,
+          mol,
+          fromSolvent: giver.isSolvent,
+          toSolvent: taker.isSolvent,
+        });
+      }
+      giver.mol -= mol;
+      taker.mol -= mol;
+      if (taker.mol <= 0) next++;
+    }
+  }
+  return transfers;
+}

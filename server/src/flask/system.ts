@@ -1,0 +1,347 @@
+/**
+ * Turns the contents of a flask into acids with stepwise constants: what the balance is solved for.
+ *
+ * Here the flask departs from bare tables: solvents enter by their own couples, dead protons stay where they are, solid
+ * bases act from their surface, hydrides by what their class takes, and in two layers the neutral forms share out.
+ * Knows: ingredients, rows.  Must not know: intended transfers, verdicts, text.
+ * Units: mol; pKa on the medium's scale.
+ * Invariants: ids of ingredients are kept; an ingredient without usable amount or structure gives nothing.   (tests/flask/system.test.ts)
+ */
+import type { Constant, Couple, ProtonStep } from '../chemistry/couple.ts';
+import type { Tables } from '../tables/tables.ts';
+import { PKA_OF_HYDRONIUM, pKaOfWater } from './balance.ts';
+import { distribution } from './distribution.ts';
+import { isCalled, rateOf } from './kinetics.ts';
+import { isSolidBase, isWater, usable } from './medium.ts';
+import type { ConstantsIn, Contents, Ingredient, Medium, Site } from './state.ts';
+import { atTemperature } from './temperature.ts';
+import { pKwOfLiquid } from './water-constant.ts';
+
+/** One component of one ingredient with its protons. */
+export interface FlaskAcid {
+  readonly ingredient: number;
+  readonly component: number;
+  /** In the order in which the protons leave, lowest constant first. */
+  readonly steps: readonly ProtonStep[];
+  /** Added to each step's value for the shares of the layers, lowest step first. */
+  readonly shifts: readonly number[];
+  readonly amount: number;
+  readonly protonsCharged: number;
+  /** Charge of the form that holds every proton. */
+  readonly fullCharge: number;
+  readonly gas: { readonly name: string; readonly protons: number; readonly most: number } | null;
+  /** Belongs to the solvent that governs. */
+  readonly isSolvent: boolean;
+}
+
+export interface FlaskSystem {
+  readonly acids: readonly FlaskAcid[];
+  /** Sum of amount × charge² of ions without protons of their own, mol. */
+  readonly spectatorCharges: number;
+  /** pKw where water governs. */
+  readonly pKw: number | null;
+}
+
+/** Which couples take part besides those that always do. */
+export interface Participation {
+  /** Couples that somebody means to move, however slow they are. */
+  readonly intended?: readonly { readonly ingredient: number; readonly couple: Couple }[];
+  /** An organometallic is about, which adds to carbonyl groups rather than taking the proton beside them. */
+  readonly sparingCarbonyls?: boolean;
+}
+
+/** Doubt about how far above its practical ceiling a solid base still reaches: undecided from 0 to 3 units. */
+const SURFACE_DOUBT = { above: 1.5, sd: 1.78 };
+/** On the DMSO scale, from which an organometallic rather adds or does nothing than take a proton from carbon. */
+const SPARED_FROM = 20;
+/** A carbon acid that does give its proton to an organometallic before anything else. */
+const EATING_FAMILIES = new Set(['alkyne', 'hydrogen-cyanide']);
+/** Kinds of solvent whose own C–H protons no base of the trade takes in the time of a step. */
+const DEAD_SOLVENTS = new Set([
+  'ether',
+  'aromatic',
+  'alkane',
+  'halogenated',
+  'amine',
+  'phosphoramide',
+  'urea',
+]);
+const HOT_WATER = 100;
+const ZERO_CELSIUS = 273.15;
+
+/** The acids of a flask. */
+export function systemOf(
+  contents: Contents,
+  medium: Medium,
+  tables: Tables,
+  constantsIn: ConstantsIn,
+  participation: Participation = {},
+): FlaskSystem {
+  const celsius = Math.min(Math.max(contents.temperature - ZERO_CELSIUS, 0), HOT_WATER);
+  const pKw = medium.aqueous ? pKwOfLiquid(celsius) : null;
+  const build: Build = { contents, medium, tables, constantsIn, participation, pKw };
+  const acids: FlaskAcid[] = [];
+  let spectatorCharges = 0;
+  const solventMol = new Map<string, number>();
+  for (const one of contents.ingredients) {
+    if (one.role === 'inert') continue;
+    if (isGoverning(one, medium)) {
+      const amount = solventAmount(one, medium);
+      const before = solventMol.get(one.solvent!.name);
+      solventMol.set(one.solvent!.name, (before ?? 0) + amount);
+      if (before === undefined) acids.push(...solventAcids(one, 0, build));
+      continue;
+    }
+    // Organic solvents over water meet its pH only through what they dissolve.
+    if (one.role === 'solvent' && medium.organic !== null) continue;
+    const { acids: more, charges } = ingredientAcids(one, build);
+    acids.push(...more);
+    spectatorCharges += charges;
+  }
+  const withSolvent = acids.map((acid) => {
+    if (!acid.isSolvent) return acid;
+    const total = solventMol.get(medium.solvent!.name)!;
+    return { ...acid, amount: total };
+  });
+  return { acids: withSolvent, spectatorCharges, pKw };
+}
+
+/** All couples of the flask with the constants they have in it, as charged. */
+export function sitesOf(system: FlaskSystem): Site[] {
+  return system.acids.flatMap(({ ingredient, steps }) =>
+    steps.map(({ couple, constant }) => ({ ingredient, couple, constant })),
+  );
+}
+
+interface Build {
+  readonly contents: Contents;
+  readonly medium: Medium;
+  readonly tables: Tables;
+  readonly constantsIn: ConstantsIn;
+  readonly participation: Participation;
+  readonly pKw: number | null;
+}
+
+function isGoverning({ solvent }: Ingredient, medium: Medium): boolean {
+  return solvent !== null && medium.solvent !== null && solvent.name === medium.solvent.name;
+}
+
+function solventAmount({ solvent, volume, mol, molecule }: Ingredient, medium: Medium): number {
+  const litres = volume !== null && 0 < volume ? volume : medium.volume;
+  const mass = molecule?.molarMass ?? null;
+  const density = solvent?.density ?? null;
+  if (mass !== null && density !== null) return (litres * 1000 * density) / mass;
+  return usable(mol);
+}
+
+/** The lyonium and lyate couples of the solvent that governs. */
+function solventAcids(one: Ingredient, amount: number, build: Build): FlaskAcid[] {
+  const { medium, pKw } = build;
+  const row = medium.solvent!;
+  const steps: ProtonStep[] = [];
+  const lyonium = isWater(row) ? PKA_OF_HYDRONIUM : ownScale(row.lyoniumPKa, build);
+  if (lyonium !== null) steps.push(solventStep(one, 'base', lyonium, build));
+  const lyate = pKw !== null ? pKaOfWater(pKw) : ownScale(row.lyatePKa, build);
+  const isDead = DEAD_SOLVENTS.has(row.kind);
+  if (lyate !== null && !isDead) steps.push(solventStep(one, 'acid', lyate, build));
+  if (steps.length === 0) return [];
+  return [
+    {
+      ingredient: one.id,
+      component: 0,
+      steps,
+      shifts: steps.map(() => 0),
+      amount,
+      protonsCharged: steps.filter(({ couple }) => couple.kind === 'acid').length,
+      fullCharge: lyonium === null ? 0 : 1,
+      gas: null,
+      isSolvent: true,
+    },
+  ];
+}
+
+/** A solvent's own constant counts only on the scale it was written for. */
+function ownScale(value: number | null, { medium }: Build): number | null {
+  return medium.solvent!.scale === medium.scale ? value : null;
+}
+
+function solventStep(
+  { molecule }: Ingredient,
+  kind: Couple['kind'],
+  value: number,
+  { medium }: Build,
+): ProtonStep {
+  const row = medium.solvent!;
+  const known = molecule?.couples.find((couple) => couple.kind === kind);
+  const couple: Couple = known ?? {
+    atom: 0,
+    element: '',
+    group: kind === 'base' ? 'lyonium' : 'lyate',
+    groupName: row.name,
+    kind,
+    family: 'solvent',
+    holdsProton: kind === 'acid',
+    equivalents: [0],
+    component: 0,
+  };
+  const sd = row.ownCoupleSd ?? 0;
+  const what = kind === 'base' ? `protonated ${row.name}` : `${row.name} as an acid`;
+  const constant: Constant = {
+    value,
+    sd,
+    scale: medium.scale,
+    origin: 'measured',
+    sources: row.sources,
+    hops: [{ what, value, sd, sources: row.sources }],
+  };
+  return { couple, constant };
+}
+
+function ingredientAcids(one: Ingredient, build: Build): { acids: FlaskAcid[]; charges: number } {
+  const { medium, tables, constantsIn } = build;
+  const amount = usable(one.mol);
+  if (one.molecule === null || amount === 0) return { acids: [], charges: 0 };
+  if (isSolidBase(one) && !medium.protic && medium.organic === null) {
+    return { acids: surfaceAcid(one, amount, medium), charges: 0 };
+  }
+  const { steps } = constantsIn(one.molecule, medium.scale, tables, one.own ? { own: one.own } : {});
+  const acids: FlaskAcid[] = [];
+  let charges = 0;
+  one.molecule.components.forEach((component, place) => {
+    const all = [...(steps[place] ?? [])].sort((a, b) => a.constant.value - b.constant.value);
+    const protonsCharged = all.filter(({ couple }) => couple.holdsProton).length;
+    const fullCharge = component.charge + all.length - protonsCharged;
+    const kept = all.filter((step) => !step.couple.holdsProton || moves(step, one, build));
+    if (kept.length === 0) {
+      charges += amount * component.charge ** 2;
+      return;
+    }
+    const placed = kept.map((step) => ({
+      ...step,
+      constant:
+        medium.scale === medium.solvent?.scale && medium.aqueous
+          ? atTemperature(
+              step.constant,
+              step.couple,
+              all.indexOf(step) + 1,
+              build.contents.temperature,
+              tables,
+            )
+          : step.constant,
+    }));
+    acids.push({
+      ingredient: one.id,
+      component: place,
+      steps: placed,
+      shifts: distribution(one, component, placed.length, fullCharge, medium),
+      amount,
+      protonsCharged: kept.filter(({ couple }) => couple.holdsProton).length,
+      fullCharge,
+      gas: gasOf(kept, build),
+      isSolvent: false,
+    });
+  });
+  if (acids.length === 0) acids.push(...hydrideAcid(one, amount, build));
+  return { acids, charges };
+}
+
+/** Whether a proton that a molecule holds can leave it in this flask. */
+function moves(
+  { couple, constant }: ProtonStep,
+  { id }: Ingredient,
+  { contents, tables, participation, medium }: Build,
+): boolean {
+  const isIntended = participation.intended?.some(
+    (meant) =>
+      meant.ingredient === id && meant.couple.atom === couple.atom && meant.couple.kind === couple.kind,
+  );
+  if (isIntended) return true;
+  if (rateOf(couple, 'leaves', contents, tables) !== 'instant') return false;
+  if (!participation.sparingCarbonyls || couple.element !== 'C' || medium.aqueous) return true;
+  return EATING_FAMILIES.has(couple.family) || constant.value < SPARED_FROM;
+}
+
+/** A solid base in an aprotic solvent: one couple at the practical ceiling of its surface. */
+function surfaceAcid(one: Ingredient, amount: number, medium: Medium): FlaskAcid[] {
+  const couple = one.molecule!.couples.find(({ holdsProton }) => !holdsProton);
+  if (couple === undefined) return [];
+  const ceiling = one.reagent!.surfaceCeiling!;
+  const value = ceiling + SURFACE_DOUBT.above;
+  const { sd } = SURFACE_DOUBT;
+  const what = `practical ceiling of solid ${one.reagent!.name} on the DMSO scale, ${ceiling}`;
+  const { sources } = one.reagent!;
+  const constant: Constant = {
+    value,
+    sd,
+    scale: medium.scale,
+    origin: 'estimated',
+    sources,
+    hops: [{ what, value, sd, sources }],
+  };
+  return [
+    {
+      ingredient: one.id,
+      component: couple.component,
+      steps: [{ couple, constant }],
+      shifts: [0],
+      amount: amount * (one.reagent!.protonCapacity ?? 1),
+      protonsCharged: 0,
+      fullCharge: 0,
+      gas: null,
+      isSolvent: false,
+    },
+  ];
+}
+
+/** A reagent whose protons its structure does not show: a complex hydride. */
+function hydrideAcid(one: Ingredient, amount: number, { medium, tables }: Build): FlaskAcid[] {
+  const row = tables.hydrides.find(({ reagent }) => isCalled(one, reagent));
+  if (row === undefined) return [];
+  const limit = medium.aqueous || medium.protic ? row.water : row.dmso;
+  if (limit === null) return [];
+  const couple: Couple = {
+    atom: 0,
+    element: 'H',
+    group: row.id,
+    groupName: row.id.replaceAll('-', ' '),
+    kind: 'base',
+    family: 'hydride',
+    holdsProton: false,
+    equivalents: [0],
+    component: 0,
+  };
+  const what = `acids that eat ${one.name} in practice, pKa up to ${limit}`;
+  const constant: Constant = {
+    value: limit,
+    sd: row.sd,
+    scale: medium.scale,
+    origin: 'estimated',
+    sources: row.sources,
+    hops: [{ what, value: limit, sd: row.sd, sources: row.sources }],
+  };
+  return [
+    {
+      ingredient: one.id,
+      component: 0,
+      steps: [{ couple, constant }],
+      shifts: [0],
+      amount: amount * (one.reagent?.protonCapacity ?? row.capacity),
+      protonsCharged: 0,
+      fullCharge: 0,
+      // Its limit says what eats it in practice, so the gas that leaves must not pull once more.
+      gas: null,
+      isSolvent: false,
+    },
+  ];
+}
+
+function gasOf(steps: readonly ProtonStep[], { tables, medium }: Build): FlaskAcid['gas'] {
+  for (const row of tables.gases) {
+    if (!steps.some(({ couple }) => row.groups.includes(couple.group))) continue;
+    const molarity = medium.aqueous ? row.water : row.organic;
+    // The neutral form must be one that these steps can reach.
+    if (molarity === null || steps.length < row.protons) return null;
+    return { name: row.name, protons: row.protons, most: molarity * medium.volume };
+  }
+  return null;
+}
