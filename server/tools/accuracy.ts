@@ -7,32 +7,15 @@
  */
 import { existsSync } from 'node:fs';
 import { join } from 'node:path';
-import { estimateInWater } from '../src/chemistry/estimate.ts';
-import { type CalibrationRow, familyFits, readCalibration } from './calibration.ts';
-import { moleculeKey, readEstimatorTables, readParents, readRules, sitesByRule } from './rule-sites.ts';
-import { siteFrame } from './site-frame.ts';
-
-interface Judged {
-  readonly row: CalibrationRow;
-  readonly frame: string;
-  readonly group: string;
-  readonly value: number | null;
-  readonly sd: number;
-}
+import { errorOf, type Judged, judgeFile } from './judge.ts';
 
 const root = process.cwd();
-const file = process.argv[2] ?? join(root, '../shared/values/water_calibration.csv');
+const file = process.argv[2] ?? join(root, '..', 'shared', 'values', 'water_calibration.csv');
 if (!existsSync(file)) {
   process.stdout.write(`No file of measured values at ${file}: nothing to compare with.\n`);
   process.exit(0);
 }
-const rules = readRules(join(root, 'data/groups.csv'));
-const tables = readEstimatorTables(join(root, 'data'), rules);
-// Molecules whose published constant the fit has used cannot judge it.
-const used = new Set(readParents(join(root, 'data/frames.csv')).map(({ smiles }) => moleculeKey(smiles)));
-const judged = readCalibration(file)
-  .filter(({ singleSite, heldOut, smiles }) => singleSite && !(heldOut && used.has(moleculeKey(smiles))))
-  .map(judge);
+const judged = judgeFile(file, join(root, 'data'));
 const seen = new Set(judged.filter(({ row }) => !row.heldOut).map(({ frame }) => frame));
 const aside = judged.filter(({ row }) => row.heldOut);
 
@@ -62,32 +45,8 @@ for (const { row, value, sd, group } of [...aside].sort((a, b) => error(b) - err
   );
 }
 
-/** The outermost of the sites that are of the row's kind, among those of its class where there are any. */
-function judge(row: CalibrationRow): Judged {
-  const nothing = { row, frame: '', group: '', value: null, sd: 0 };
-  const found = sitesByRule(row.smiles, rules);
-  if (found === null) return nothing;
-  const ofKind = found.sites.filter(({ kind }) => kind === row.kind);
-  const fitting = ofKind.filter(({ family }) => familyFits(row, family));
-  const sign = row.kind === 'base' ? 1 : -1;
-  let best: Judged = nothing;
-  for (const site of fitting.length === 0 ? ofKind : fitting) {
-    const constant = estimateInWater(found.graph, site, site.equivalents, tables);
-    if (constant === null) continue;
-    if (best.value !== null && sign * constant.value <= sign * best.value) continue;
-    best = {
-      row,
-      frame: siteFrame(found.graph, site),
-      group: site.group,
-      value: constant.value,
-      sd: constant.sd,
-    };
-  }
-  return best;
-}
-
-function error({ row, value }: Judged): number {
-  return value === null ? 99 : Math.abs(value - row.pKa);
+function error(judged: Judged): number {
+  return errorOf(judged) ?? Number.POSITIVE_INFINITY;
 }
 
 function bySize(a: string, b: string): number {
