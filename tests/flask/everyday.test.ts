@@ -187,6 +187,7 @@ test.each(flawed)('%s does not go', (_, one) => {
 test('sodium hydroxide is some three to four units short of a ketone in water', () => {
   const verdict = judge(flawed[0]![1]);
   expect(verdict.logK).toBeCloseTo(15.74 - 19.3, 1);
+  expect(verdict.broughtBy).toBe(2);
 });
 
 test('sodium ethoxide takes part of a ketone in ethanol, and less than half', () => {

@@ -84,6 +84,7 @@ export function fatesOf(solved: Solved): ReagentFate[] {
   const byId = new Map(solved.contents.ingredients.map((one) => [one.id, one]));
   const fates: ReagentFate[] = [];
   for (const transfer of ledgerOf(solved)) {
+    if (transfer.isIdentity) continue;
     const sd = differenceSd(transfer.from, transfer.to, solved.medium.scaleSd);
     const gap = transfer.to.constant.value - transfer.from.constant.value;
     const doubt = normalBelow(-gap / Math.max(sd, Number.MIN_VALUE));
@@ -122,7 +123,7 @@ export function solventFate(
   participation: Participation = {},
 ): SolventFate {
   const solved = solveContents(contents, tables, constantsIn, participation);
-  const transfers = ledgerOf(solved);
+  const transfers = ledgerOf(solved).filter(({ isIdentity }) => !isIdentity);
   const place = solved.system.acids.findIndex(({ isSolvent }) => isSolvent);
   const ion = (kind: Couple['kind']) => {
     const acid = solved.system.acids[place];

@@ -17,6 +17,7 @@ import { isHelpedByMetal } from './allowances/lewis-acid.ts';
 import { hasPhaseTransfer } from './allowances/phase-transfer.ts';
 import { HIGHEST_PH, LOWEST_PH, solveBalance, stepShares } from './balance.ts';
 import { rateOf } from './kinetics.ts';
+import { ledgerOf } from './ledger.ts';
 import { isSolidBase, mediumOf } from './medium.ts';
 import { normalBelow } from './numbers.ts';
 import { chargedShare, type Solved, solveContents, solveSystem } from './solve.ts';
@@ -196,6 +197,7 @@ function withSite(
     fullCharge: molecule!.components[couple.component]?.charge ?? 0,
     gas: null,
     isSolvent: false,
+    isSolventIon: false,
   };
   const at = before.steps.filter((step) => step.constant.value <= constant.value).length;
   const after: FlaskAcid = {
@@ -263,6 +265,7 @@ function weigh(
       extent,
       probability: sure,
       partner,
+      broughtBy: null,
       allowances,
       borrowed: false,
       capacity: 0,
@@ -311,6 +314,7 @@ function weigh(
     extent,
     probability,
     partner,
+    broughtBy: broughtBy(placed, partner, loses),
     allowances,
     borrowed,
     capacity,
@@ -428,6 +432,18 @@ function marginOf(placed: Placed, shift: number, capacity: number, loses: boolea
   const pKa = full.acids[acid]!.pKa[step]! + (loses ? -shift : shift);
   const odds = Math.log10(target / (1 - target));
   return loses ? pH - pKa - odds : pKa - pH - odds;
+}
+
+/** The ingredient that turned the solvent into the ion that acts; null where the partner is no solvent. */
+function broughtBy({ rest }: Placed, partner: Site, loses: boolean): number | null {
+  const solvent = rest.system.acids.find(({ isSolvent }) => isSolvent);
+  if (solvent === undefined || solvent.ingredient !== partner.ingredient) return null;
+  const makers = ledgerOf(rest).filter((one) =>
+    loses ? one.fromSolvent && !one.toSolvent : one.toSolvent && !one.fromSolvent,
+  );
+  if (makers.length === 0) return null;
+  const most = makers.reduce((best, one) => (best.mol < one.mol ? one : best));
+  return (loses ? most.to : most.from).ingredient;
 }
 
 /** Whether the solvent took over what a stronger reagent brought: its own ion is what acts. */

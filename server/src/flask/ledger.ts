@@ -15,11 +15,14 @@ export interface Transfer {
   readonly mol: number;
   readonly fromSolvent: boolean;
   readonly toSolvent: boolean;
+  /** Between the solvent and its own ion that a reagent brought: hydroxide in water. Nothing is lost by it. */
+  readonly isIdentity: boolean;
 }
 
 interface Account {
   readonly site: Site;
   readonly isSolvent: boolean;
+  readonly isSolventIon: boolean;
   mol: number;
 }
 
@@ -36,6 +39,7 @@ export function ledgerOf({ system, shares }: Solved): Transfer[] {
       const account: Account = {
         site: { ingredient: acid.ingredient, couple, constant },
         isSolvent: acid.isSolvent,
+        isSolventIon: acid.isSolventIon,
         mol: Math.abs(moved),
       };
       if (moved < 0) givers.push(account);
@@ -62,6 +66,7 @@ function settle(givers: readonly Account[], takers: readonly Account[]): Transfe
           mol,
           fromSolvent: giver.isSolvent,
           toSolvent: taker.isSolvent,
+          isIdentity: (giver.isSolvent && taker.isSolventIon) || (giver.isSolventIon && taker.isSolvent),
         });
       }
       giver.mol -= mol;

@@ -133,6 +133,8 @@ export interface Verdict {
   readonly site: Site;
   /** Null where nothing in the flask takes (gives) a proton. */
   readonly partner: Site | null;
+  /** Where the solvent's own ion acts: the ingredient that made it (NaOH in water, NaH in ethanol); else null. */
+  readonly broughtBy: number | null;
   readonly scale: ScaleId;
   readonly allowances: readonly Allowance[];
   /** The sd of the verdict without borrowing the scale would give another answer. */

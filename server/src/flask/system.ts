@@ -7,9 +7,10 @@
  * Units: mol; pKa on the medium's scale.
  * Invariants: ids of ingredients are kept; an ingredient without usable amount or structure gives nothing.   (tests/flask/system.test.ts)
  */
-import type { Constant, Couple, ProtonStep } from '../chemistry/couple.ts';
+import type { Component, Constant, Couple, Perceived, ProtonStep } from '../chemistry/couple.ts';
 import type { Tables } from '../tables/tables.ts';
 import { PKA_OF_HYDRONIUM, pKaOfWater } from './balance.ts';
+import { coupledSteps } from './carbon-sites.ts';
 import { distribution } from './distribution.ts';
 import { isCalled, rateOf } from './kinetics.ts';
 import { isSolidBase, isWater, usable } from './medium.ts';
@@ -32,6 +33,8 @@ export interface FlaskAcid {
   readonly gas: { readonly name: string; readonly protons: number; readonly most: number } | null;
   /** Belongs to the solvent that governs. */
   readonly isSolvent: boolean;
+  /** The solvent's own ion or molecule from another ingredient: hydroxide in water. */
+  readonly isSolventIon: boolean;
 }
 
 export interface FlaskSystem {
@@ -156,6 +159,7 @@ function solventAcids(one: Ingredient, amount: number, build: Build): FlaskAcid[
       fullCharge: lyonium === null ? 0 : 1,
       gas: null,
       isSolvent: true,
+      isSolventIon: false,
     },
   ];
 }
@@ -211,23 +215,28 @@ function ingredientAcids(one: Ingredient, build: Build): { acids: FlaskAcid[]; c
     const all = [...(steps[place] ?? [])].sort((a, b) => a.constant.value - b.constant.value);
     const protonsCharged = all.filter(({ couple }) => couple.holdsProton).length;
     const fullCharge = component.charge + all.length - protonsCharged;
-    const kept = all.filter((step) => !step.couple.holdsProton || moves(step, one, build));
+    const meant =
+      build.participation.intended?.find(({ ingredient }) => ingredient === one.id)?.couple ?? null;
+    const moving = all.filter((step) => !step.couple.holdsProton || moves(step, one, build));
+    const kept = coupledSteps(moving, one.molecule!, meant);
     if (kept.length === 0) {
       charges += amount * component.charge ** 2;
       return;
     }
+    const own = ownSolvent(one, component, kept, build);
     const placed = kept.map((step) => ({
       ...step,
       constant:
-        medium.scale === medium.solvent?.scale && medium.aqueous
+        own?.get(step.couple.kind) ??
+        (medium.aqueous
           ? atTemperature(
               step.constant,
               step.couple,
-              all.indexOf(step) + 1,
+              placeAmong(all, step),
               build.contents.temperature,
               tables,
             )
-          : step.constant,
+          : step.constant),
     }));
     acids.push({
       ingredient: one.id,
@@ -239,10 +248,57 @@ function ingredientAcids(one: Ingredient, build: Build): { acids: FlaskAcid[]; c
       fullCharge,
       gas: gasOf(kept, build),
       isSolvent: false,
+      isSolventIon: own !== null,
     });
   });
   if (acids.length === 0) acids.push(...hydrideAcid(one, amount, build));
   return { acids, charges };
+}
+
+/** The constants of the solvent's own couples, where a component is the solvent or its ion; else null. */
+function ownSolvent(
+  { molecule }: Ingredient,
+  { atoms }: Component,
+  steps: readonly ProtonStep[],
+  build: Build,
+): Map<Couple['kind'], Constant> | null {
+  const { contents, medium } = build;
+  const solvent = contents.ingredients.find((one) => isGoverning(one, medium));
+  if (solvent === undefined || medium.solvent === null) return null;
+  const isSame = isWater(medium.solvent)
+    ? steps.every(({ couple }) => couple.group === 'water' || couple.group === 'water-o')
+    : sameAtoms(molecule!, atoms, solvent.molecule);
+  if (!isSame) return null;
+  const [acid] = solventAcids(solvent, 0, build);
+  return new Map(acid?.steps.map(({ couple, constant }) => [couple.kind, constant]));
+}
+
+/** Whether a component and a solvent have the same heavy atoms and the same groups. */
+function sameAtoms(molecule: Perceived, atoms: readonly number[], solvent: Perceived | null): boolean {
+  if (molecule.graph === null || solvent?.graph == null) return false;
+  const heavy = (list: readonly { readonly element: string }[]) =>
+    list
+      .map(({ element }) => element)
+      .filter((element) => element !== 'H')
+      .sort()
+      .join();
+  const there = new Set(atoms);
+  const groups = (perceived: Perceived, inside: (atom: number) => boolean) =>
+    perceived.couples
+      .filter(({ atom }) => inside(atom))
+      .map(({ group }) => group)
+      .sort()
+      .join();
+  return (
+    heavy(atoms.map((atom) => molecule.graph!.atoms[atom]!)) === heavy(solvent.graph.atoms) &&
+    groups(molecule, (atom) => there.has(atom)) === groups(solvent, () => true)
+  );
+}
+
+/** Which proton of the molecule a step is, from 1. */
+function placeAmong(all: readonly ProtonStep[], { couple, constant }: ProtonStep): number {
+  const own = all.filter((step) => step.couple.group === couple.group);
+  return own.findIndex((step) => step.constant.value === constant.value) + 1;
 }
 
 /** Whether a proton that a molecule holds can leave it in this flask. */
@@ -289,6 +345,7 @@ function surfaceAcid(one: Ingredient, amount: number, medium: Medium): FlaskAcid
       fullCharge: 0,
       gas: null,
       isSolvent: false,
+      isSolventIon: false,
     },
   ];
 }
@@ -297,7 +354,8 @@ function surfaceAcid(one: Ingredient, amount: number, medium: Medium): FlaskAcid
 function hydrideAcid(one: Ingredient, amount: number, { medium, tables }: Build): FlaskAcid[] {
   const row = tables.hydrides.find(({ reagent }) => isCalled(one, reagent));
   if (row === undefined) return [];
-  const limit = medium.aqueous || medium.protic ? row.water : row.dmso;
+  // In alcohols neutral acids lie some five units above water, near their values in DMSO.
+  const limit = medium.aqueous ? row.water : row.dmso;
   if (limit === null) return [];
   const couple: Couple = {
     atom: 0,
@@ -331,6 +389,7 @@ function hydrideAcid(one: Ingredient, amount: number, { medium, tables }: Build)
       // Its limit says what eats it in practice, so the gas that leaves must not pull once more.
       gas: null,
       isSolvent: false,
+      isSolventIon: false,
     },
   ];
 }
