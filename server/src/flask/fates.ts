@@ -66,7 +66,7 @@ const FOR_GOOD = new Set([
   'borohydride',
 ]);
 /** Less than this share of a reagent lost is nobody's business. */
-const LEAST_LOST = 1e-3;
+const LEAST_LOST = 5e-3;
 
 /** What every reagent and compound of the flask loses by proton transfer, the largest share first. */
 export function reagentFates(
