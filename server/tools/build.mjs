@@ -19,7 +19,16 @@ const common = {
   absWorkingDir: root,
   legalComments: 'none',
 };
-const node = { ...common, platform: 'node', target: 'node20', format: 'cjs' };
+/** Some packages ask for the address of their own file, which a bundle of this format has to be told. */
+const ownAddress = "const ownAddress=require('node:url').pathToFileURL(__filename).href;";
+const node = {
+  ...common,
+  platform: 'node',
+  target: 'node20',
+  format: 'cjs',
+  define: { 'import.meta.url': 'ownAddress' },
+  banner: { js: ownAddress },
+};
 const browser = { ...common, platform: 'browser', target: 'es2022' };
 
 /** Bundles one of the tools and runs it on the project. */
@@ -29,6 +38,8 @@ async function run(tool) {
     minify: false,
     packages: 'external',
     format: 'esm',
+    define: {},
+    banner: {},
     entryPoints: [`server/tools/${tool}.ts`],
     outfile: `dist/tools/${tool}.mjs`,
   });
@@ -49,7 +60,7 @@ if (process.argv[2] !== 'tables') {
       ...node,
       entryPoints: ['server/src/cli/main.ts'],
       outfile: 'dist/lyate.cjs',
-      banner: { js: '#!/usr/bin/env node' },
+      banner: { js: `#!/usr/bin/env node\n${ownAddress}` },
     }),
     bundle({ ...node, entryPoints: ['server/src/lsp/node.ts'], outfile: 'dist/server.cjs' }),
     bundle({

@@ -1,0 +1,92 @@
+/**
+ * Figures that the analysis worked out, to be shown behind the words they belong to.
+ *
+ * Knows: analysed plans.  Must not know: the protocol, what the user wants to see.
+ */
+import type { Moment, TransferFact } from '../checks/facts.ts';
+import type { Amount, Range, Statement } from '../route/plan.ts';
+import { amountOf, oneDecimal, percent } from './figures.ts';
+import { shiftRange } from './ranges.ts';
+import type { Analysed } from './types.ts';
+
+export type HintKind = 'amounts' | 'transfers' | 'pH';
+
+export interface Hint {
+  readonly kind: HintKind;
+  /** Stands right behind the end of this. */
+  readonly behind: Range;
+  readonly text: string;
+  readonly tooltip: string;
+}
+
+/** Hints of the lines from `first` to `last`, absolute. */
+export function hintsIn(
+  { plan, steps }: Analysed,
+  { first, last }: { first: number; last: number },
+  kinds: ReadonlySet<HintKind>,
+): Hint[] {
+  return plan.steps.flatMap((placed, index) => {
+    const { firstLine, lineCount } = placed;
+    if (firstLine + lineCount <= first || last < firstLine) return [];
+    const { facts } = steps[index]!;
+    const hints: Hint[] = [];
+    for (const statement of placed.statements) {
+      const line = firstLine + statement.range.start.line;
+      if (line < first || last < line) continue;
+      if (kinds.has('amounts')) hints.push(...amountHint(statement));
+      if (kinds.has('transfers')) hints.push(...transferHint(statement, facts.transfers));
+      if (kinds.has('pH')) hints.push(...pHHint(statement, facts.moments));
+    }
+    return hints.map((hint) => ({ ...hint, behind: shiftRange(hint.behind, firstLine) }));
+  });
+}
+
+function amountHint(statement: Statement): Hint[] {
+  if (!('amount' in statement) || statement.keyword === 'solvent' || statement.keyword === 'wash') return [];
+  const { amount } = statement;
+  if (amount.range === null || amount.mol === null || amount.assumed || writtenInMol(amount)) return [];
+  const equiv = amount.equiv === null ? '' : `, ${oneDecimal(amount.equiv)} equiv`;
+  return [
+    {
+      kind: 'amounts',
+      behind: amount.range,
+      text: `= ${amountOf(amount.mol)}`,
+      tooltip: `${amountOf(amount.mol)}${equiv}`,
+    },
+  ];
+}
+
+/** What is written in mol needs no hint; an amount in mol carries neither mass nor volume of its own. */
+function writtenInMol({ equiv, mass, volume, qualifier }: Amount): boolean {
+  return (equiv === null && mass === null && volume === null) || qualifier !== null;
+}
+
+function transferHint(statement: Statement, transfers: readonly TransferFact[]): Hint[] {
+  const fact = transfers.find((transfer) => transfer.statement === statement);
+  if (fact === undefined || fact.verdicts.length === 0) return [];
+  const worst = fact.verdicts.reduce((low, each) => (each.extent < low.extent ? each : low));
+  const logK = `log K ${oneDecimal(worst.logK)} ± ${oneDecimal(worst.sd)}`;
+  return [
+    {
+      kind: 'transfers',
+      behind: statement.range,
+      text: `${logK}, ${percent(worst.extent)}`,
+      tooltip: `${logK} on the ${worst.scale} scale; ${percent(worst.extent)} of the intended protons move at these amounts.`,
+    },
+  ];
+}
+
+function pHHint(statement: Statement, moments: readonly Moment[]): Hint[] {
+  if (statement.keyword !== 'quench' && statement.keyword !== 'adjust') return [];
+  const moment = moments.find((each) => each.statement === statement);
+  const state = moment?.state();
+  if (state === undefined || state.pH === null || !state.medium.aqueous) return [];
+  return [
+    {
+      kind: 'pH',
+      behind: statement.range,
+      text: `pH ${oneDecimal(state.pH)}`,
+      tooltip: 'pH of the aqueous phase once the protons have come to rest.',
+    },
+  ];
+}
