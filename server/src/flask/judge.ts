@@ -17,19 +17,19 @@ import { isHelpedByMetal } from './allowances/lewis-acid.ts';
 import { hasPhaseTransfer } from './allowances/phase-transfer.ts';
 import { HIGHEST_PH, LOWEST_PH, solveBalance, stepShares } from './balance.ts';
 import { rateOf } from './kinetics.ts';
-import { ledgerOf } from './ledger.ts';
 import { isSolidBase, mediumOf } from './medium.ts';
 import { normalBelow } from './numbers.ts';
-import { chargedShare, type Solved, solveContents, solveSystem } from './solve.ts';
+import { broughtBy, candidatesIn, capacityOf, isLevelled, partnerOf } from './partner.ts';
+import { type Direction, type Placed, placeSite } from './placing.ts';
+import { chargedShare, type Solved } from './solve.ts';
 import type { Allowance, ConstantsIn, Contents, Ingredient, Site, Verdict } from './state.ts';
-import type { FlaskAcid, FlaskSystem } from './system.ts';
 import { differenceSd } from './uncertainty.ts';
 
 export interface Intent {
   readonly ingredient: number;
   /** Indices into the molecule's couples, any of which will do; empty for whichever the flask takes. */
   readonly couples: readonly number[];
-  readonly direction: 'deprotonate' | 'protonate';
+  readonly direction: Direction;
   /** A conversion after it uses up what forms. */
   readonly isConsumed?: boolean;
   /** What that conversion makes. */
@@ -43,10 +43,6 @@ export interface VerdictThresholds {
 }
 
 const THRESHOLDS: VerdictThresholds = { error: 0.95, warning: 0.8, undecided: 0.2 };
-/** Share of the site's amount from which a base counts as the one that acts. */
-const ACTING_SHARE = 0.05;
-/** Bases this much weaker than the acting one do not count as capacity. */
-const CAPACITY_SPAN = 4;
 const HALF = 0.5;
 /** Where a metal or a phase-transfer catalyst helps, a failure is no surer than this. */
 const MOST_DOUBT = 0.5;
@@ -69,7 +65,7 @@ export function judgeTransfer(
   if (one?.molecule == null) return null;
   const meant = chooseCouple(one, intent, contents, tables, constantsIn);
   if (meant === null) return null;
-  const placed = placeSite(contents, one, meant, intent, tables, constantsIn);
+  const placed = placeSite(contents, one, meant, intent.direction, tables, constantsIn);
   if (placed === null) return null;
   return weigh(placed, intent, tables, constantsIn, thresholds);
 }
@@ -81,20 +77,6 @@ export function answerFor(
 ): Verdict['answer'] {
   if (thresholds.warning <= probability) return 'no';
   return thresholds.undecided <= probability ? 'undecided' : 'yes';
-}
-
-/** A flask with the judged site in it and without it. */
-interface Placed {
-  readonly contents: Contents;
-  readonly one: Ingredient;
-  readonly site: ProtonStep;
-  readonly amount: number;
-  /** Where the site's step stands in `full`. */
-  readonly acid: number;
-  readonly step: number;
-  readonly full: Solved;
-  /** The same flask with the site's proton held fast where it was charged. */
-  readonly rest: Solved;
 }
 
 /** Among the couples that will do, the one that moves most easily. */
@@ -120,119 +102,6 @@ function chooseCouple(
     if (isEasier) best = { couple, value: constant.value };
   }
   return (best as { couple: Couple } | null)?.couple ?? null;
-}
-
-function placeSite(
-  contents: Contents,
-  one: Ingredient,
-  couple: Couple,
-  intent: Intent,
-  tables: Tables,
-  constantsIn: ConstantsIn,
-): Placed | null {
-  const participation = { intended: [{ ingredient: one.id, couple }] };
-  const first = solveContents(contents, tables, constantsIn, participation);
-  const system = withSite(first, one, couple, intent, tables, constantsIn);
-  if (system === null) return null;
-  const full = system === first.system ? first : solveSystem(contents, first.medium, system);
-  const acid = system.acids.findIndex(
-    (candidate) => candidate.ingredient === one.id && stepOf(candidate, couple, intent) !== -1,
-  );
-  if (acid === -1) return null;
-  const step = stepOf(system.acids[acid]!, couple, intent);
-  const rest = solveSystem(contents, first.medium, withoutStep(system, acid, step));
-  return {
-    contents,
-    one,
-    site: system.acids[acid]!.steps[step]!,
-    amount: system.acids[acid]!.amount,
-    acid,
-    step,
-    full,
-    rest,
-  };
-}
-
-/** The step of an acid that a couple stands for: among several the one that moves next. */
-function stepOf(acid: FlaskAcid, couple: Couple, { direction }: Intent): number {
-  const places = acid.steps.flatMap((step, place) => (isSame(step.couple, couple) ? [place] : []));
-  if (places.length === 0) return -1;
-  const loses = direction === 'deprotonate';
-  const ready = places.filter((place) => HALF < chargedShare(acid, place) === loses);
-  const open = ready.length === 0 ? places : ready;
-  return loses ? open[0]! : open.at(-1)!;
-}
-
-function isSame(a: Couple, b: Couple): boolean {
-  return (
-    a.kind === b.kind && a.component === b.component && (a.atom === b.atom || a.equivalents.includes(b.atom))
-  );
-}
-
-/** The system with a step for the couple; a couple that is no step of its own gets one with its own constant. */
-function withSite(
-  { system, medium }: Solved,
-  { id, molecule, own, mol }: Ingredient,
-  couple: Couple,
-  intent: Intent,
-  tables: Tables,
-  constantsIn: ConstantsIn,
-): FlaskSystem | null {
-  if (system.acids.some((acid) => acid.ingredient === id && stepOf(acid, couple, intent) !== -1))
-    return system;
-  const constants = constantsIn(molecule!, medium.scale, tables, own ? { own } : {}).couples;
-  const constant = constants[molecule!.couples.indexOf(couple)];
-  if (constant == null) return null;
-  const place = system.acids.findIndex(
-    (acid) => acid.ingredient === id && acid.component === couple.component,
-  );
-  const held = couple.holdsProton ? 1 : 0;
-  const before: FlaskAcid = system.acids[place] ?? {
-    ingredient: id,
-    component: couple.component,
-    steps: [],
-    shifts: [],
-    amount: mol,
-    protonsCharged: 0,
-    fullCharge: molecule!.components[couple.component]?.charge ?? 0,
-    gas: null,
-    isSolvent: false,
-    isSolventIon: false,
-  };
-  const at = before.steps.filter((step) => step.constant.value <= constant.value).length;
-  const after: FlaskAcid = {
-    ...before,
-    steps: [...before.steps.slice(0, at), { couple, constant }, ...before.steps.slice(at)],
-    shifts: [...before.shifts.slice(0, at), 0, ...before.shifts.slice(at)],
-    protonsCharged: before.protonsCharged + held,
-    fullCharge: before.fullCharge + 1 - held,
-  };
-  const acids = [...system.acids];
-  if (place === -1) acids.push(after);
-  else acids[place] = after;
-  return { ...system, acids };
-}
-
-function withoutStep(system: FlaskSystem, acid: number, step: number): FlaskSystem {
-  const before = system.acids[acid]!;
-  const held = chargedShare(before, step);
-  const drop = <T>(list: readonly T[]) => list.filter((_, place) => place !== step);
-  const after: FlaskAcid = {
-    ...before,
-    steps: drop(before.steps),
-    shifts: drop(before.shifts),
-    protonsCharged: before.protonsCharged - held,
-    fullCharge: before.fullCharge - 1 + held,
-    gas: null,
-  };
-  return { ...system, acids: system.acids.map((one, place) => (place === acid ? after : one)) };
-}
-
-/** A couple on the other side of the transfer, with what it can take (give). */
-interface Candidate {
-  readonly site: Site;
-  readonly able: number;
-  readonly isSolvent: boolean;
 }
 
 function weigh(
@@ -326,46 +195,6 @@ function pick({ couple, constant }: ProtonStep): { couple: Couple; constant: Con
   return { couple, constant };
 }
 
-/** Every other couple that can take (give) the proton, as it stands before the site takes part. */
-function candidatesIn({ rest }: Placed, loses: boolean): Candidate[] {
-  const { system, shares } = rest;
-  return system.acids.flatMap(({ ingredient, steps, amount, isSolvent }, place) =>
-    steps.map(({ couple, constant }, step) => {
-      const held = shares[place]![step]!;
-      return {
-        site: { ingredient, couple, constant },
-        able: amount * (loses ? 1 - held : held),
-        isSolvent,
-      };
-    }),
-  );
-}
-
-/** The strongest base (acid) that is there in an amount that matters; the strongest of all where none is. */
-function partnerOf(candidates: readonly Candidate[], amount: number, loses: boolean): Site | null {
-  const byStrength = [...candidates].sort((a, b) =>
-    loses ? b.site.constant.value - a.site.constant.value : a.site.constant.value - b.site.constant.value,
-  );
-  const acting = byStrength.find(({ able }) => ACTING_SHARE * amount <= able);
-  if (acting !== undefined) return acting.site;
-  const strength = ({ able, site }: Candidate) =>
-    Math.log10(Math.max(able, Number.MIN_VALUE)) + (loses ? site.constant.value : -site.constant.value);
-  const best = byStrength.reduce<Candidate | null>(
-    (most, next) => (0 < next.able && (most === null || strength(most) < strength(next)) ? next : most),
-    null,
-  );
-  return best?.site ?? null;
-}
-
-/** mol of proton that bases (acids) about as strong as the acting one can move. */
-function capacityOf(candidates: readonly Candidate[], partner: Site, loses: boolean): number {
-  const limit = partner.constant.value + (loses ? -CAPACITY_SPAN : CAPACITY_SPAN);
-  return candidates.reduce((sum, { site, able }) => {
-    const counts = loses ? limit <= site.constant.value : site.constant.value <= limit;
-    return counts ? sum + able : sum;
-  }, 0);
-}
-
 /** log K of the pair and its sd, by the scale or, where the two form an ion pair, by their difference in water. */
 function compare(
   site: Site,
@@ -433,32 +262,6 @@ function marginOf(placed: Placed, shift: number, capacity: number, loses: boolea
   const odds = Math.log10(target / (1 - target));
   return loses ? pH - pKa - odds : pKa - pH - odds;
 }
-
-/** The ingredient that turned the solvent into the ion that acts; null where the partner is no solvent. */
-function broughtBy({ rest }: Placed, partner: Site, loses: boolean): number | null {
-  const solvent = rest.system.acids.find(({ isSolvent }) => isSolvent);
-  if (solvent === undefined || solvent.ingredient !== partner.ingredient) return null;
-  const makers = ledgerOf(rest).filter((one) =>
-    loses ? one.fromSolvent && !one.toSolvent : one.toSolvent && !one.fromSolvent,
-  );
-  if (makers.length === 0) return null;
-  const most = makers.reduce((best, one) => (best.mol < one.mol ? one : best));
-  return (loses ? most.to : most.from).ingredient;
-}
-
-/** Whether the solvent took over what a stronger reagent brought: its own ion is what acts. */
-function isLevelled({ rest }: Placed, loses: boolean): boolean {
-  const place = rest.system.acids.findIndex(({ isSolvent }) => isSolvent);
-  if (place === -1) return false;
-  const { steps, amount } = rest.system.acids[place]!;
-  const own = steps.findIndex(({ couple }) => couple.kind === (loses ? 'acid' : 'base'));
-  if (own === -1) return false;
-  const held = rest.shares[place]![own]!;
-  return LEVELLED_SHARE * rest.medium.volume < amount * (loses ? 1 - held : held);
-}
-
-/** mol/L of a solvent's own ion that cannot come from its autoprotolysis. */
-const LEVELLED_SHARE = 1e-3;
 
 function netOf(
   { product, isConsumed }: Intent,

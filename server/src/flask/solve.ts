@@ -11,13 +11,14 @@
 import type { Tables } from '../tables/tables.ts';
 import { activityVariance, mixedConstants } from './activity.ts';
 import { formShares, HIGHEST_PH, LOWEST_PH, type Polyprotic, solveBalance, stepShares } from './balance.ts';
+import { isCalled } from './kinetics.ts';
 import { mediumOf } from './medium.ts';
-import type { ConstantsIn, Contents, CoupleState, FlaskState, Medium } from './state.ts';
+import type { ConstantsIn, Contents, CoupleState, FlaskState, Ingredient, Medium } from './state.ts';
 import { type FlaskAcid, type FlaskSystem, type Participation, systemOf } from './system.ts';
 
 const MOST_TURNS = 100;
 const FIXED = 1e-13;
-/** Share of an organometallic that must be left for it to be the one that reacts. */
+/** Share of an organometallic or hydride that must be left for it to be the one that reacts. */
 const LEFT_OVER = 0.01;
 const EDGE = 1e-6;
 const HYDRIDE = 'hydride';
@@ -55,14 +56,18 @@ export function solveContents(
   const medium = mediumOf(contents);
   const solve = (how: Participation) =>
     solveSystem(contents, medium, systemOf(contents, medium, tables, constantsIn, how));
-  const organometallic = contents.ingredients.filter(
-    ({ reagent, role }) => role !== 'inert' && reagent?.roles.includes('organometallic'),
-  );
-  if (organometallic.length === 0) return solve(participation);
-  // An organometallic that nothing acidic has eaten adds to carbonyl groups; once it is eaten, its successor enolises them.
+  const adders = contents.ingredients.filter((one) => addsToCarbonyls(one, tables));
+  if (adders.length === 0) return solve(participation);
+  // What nothing acidic has eaten adds to carbonyl groups; once it is eaten, its successor enolises them.
   const sparing = solve({ ...participation, sparingCarbonyls: true });
-  const isLeft = organometallic.some(({ id }) => LEFT_OVER < shareUnprotonated(sparing, id));
+  const isLeft = adders.some(({ id }) => LEFT_OVER < shareUnprotonated(sparing, id));
   return isLeft ? sparing : solve(participation);
+}
+
+/** Whether a reagent adds to a carbonyl group rather than taking the proton beside it. */
+function addsToCarbonyls(one: Ingredient, tables: Tables): boolean {
+  if (isCalled(one, 'role:organometallic')) return true;
+  return tables.hydrides.find(({ reagent }) => isCalled(one, reagent))?.carbon === false;
 }
 
 /** Solves a system in its medium. */

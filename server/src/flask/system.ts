@@ -12,8 +12,9 @@ import type { Tables } from '../tables/tables.ts';
 import { PKA_OF_HYDRONIUM, pKaOfWater } from './balance.ts';
 import { coupledSteps } from './carbon-sites.ts';
 import { distribution } from './distribution.ts';
-import { isCalled, rateOf } from './kinetics.ts';
+import { rateOf } from './kinetics.ts';
 import { isSolidBase, isWater, usable } from './medium.ts';
+import { hydrideAcid, surfaceAcid } from './practical-bases.ts';
 import type { ConstantsIn, Contents, Ingredient, Medium, Site } from './state.ts';
 import { atTemperature } from './temperature.ts';
 import { pKwOfLiquid } from './water-constant.ts';
@@ -53,8 +54,6 @@ export interface Participation {
   readonly sparingCarbonyls?: boolean;
 }
 
-/** Doubt about how far above its practical ceiling a solid base still reaches: undecided from 0 to 3 units. */
-const SURFACE_DOUBT = { above: 1.5, sd: 1.78 };
 /** On the DMSO scale, from which an organometallic rather adds or does nothing than take a proton from carbon. */
 const SPARED_FROM = 20;
 /** A carbon acid that does give its proton to an organometallic before anything else. */
@@ -251,7 +250,7 @@ function ingredientAcids(one: Ingredient, build: Build): { acids: FlaskAcid[]; c
       isSolventIon: own !== null,
     });
   });
-  if (acids.length === 0) acids.push(...hydrideAcid(one, amount, build));
+  if (acids.length === 0) acids.push(...hydrideAcid(one, amount, medium, tables));
   return { acids, charges };
 }
 
@@ -315,83 +314,6 @@ function moves(
   if (rateOf(couple, 'leaves', contents, tables) !== 'instant') return false;
   if (!participation.sparingCarbonyls || couple.element !== 'C' || medium.aqueous) return true;
   return EATING_FAMILIES.has(couple.family) || constant.value < SPARED_FROM;
-}
-
-/** A solid base in an aprotic solvent: one couple at the practical ceiling of its surface. */
-function surfaceAcid(one: Ingredient, amount: number, medium: Medium): FlaskAcid[] {
-  const couple = one.molecule!.couples.find(({ holdsProton }) => !holdsProton);
-  if (couple === undefined) return [];
-  const ceiling = one.reagent!.surfaceCeiling!;
-  const value = ceiling + SURFACE_DOUBT.above;
-  const { sd } = SURFACE_DOUBT;
-  const what = `practical ceiling of solid ${one.reagent!.name} on the DMSO scale, ${ceiling}`;
-  const { sources } = one.reagent!;
-  const constant: Constant = {
-    value,
-    sd,
-    scale: medium.scale,
-    origin: 'estimated',
-    sources,
-    hops: [{ what, value, sd, sources }],
-  };
-  return [
-    {
-      ingredient: one.id,
-      component: couple.component,
-      steps: [{ couple, constant }],
-      shifts: [0],
-      amount: amount * (one.reagent!.protonCapacity ?? 1),
-      protonsCharged: 0,
-      fullCharge: 0,
-      gas: null,
-      isSolvent: false,
-      isSolventIon: false,
-    },
-  ];
-}
-
-/** A reagent whose protons its structure does not show: a complex hydride. */
-function hydrideAcid(one: Ingredient, amount: number, { medium, tables }: Build): FlaskAcid[] {
-  const row = tables.hydrides.find(({ reagent }) => isCalled(one, reagent));
-  if (row === undefined) return [];
-  // In alcohols neutral acids lie some five units above water, near their values in DMSO.
-  const limit = medium.aqueous ? row.water : row.dmso;
-  if (limit === null) return [];
-  const couple: Couple = {
-    atom: 0,
-    element: 'H',
-    group: row.id,
-    groupName: row.id.replaceAll('-', ' '),
-    kind: 'base',
-    family: 'hydride',
-    holdsProton: false,
-    equivalents: [0],
-    component: 0,
-  };
-  const what = `acids that eat ${one.name} in practice, pKa up to ${limit}`;
-  const constant: Constant = {
-    value: limit,
-    sd: row.sd,
-    scale: medium.scale,
-    origin: 'estimated',
-    sources: row.sources,
-    hops: [{ what, value: limit, sd: row.sd, sources: row.sources }],
-  };
-  return [
-    {
-      ingredient: one.id,
-      component: 0,
-      steps: [{ couple, constant }],
-      shifts: [0],
-      amount: amount * (one.reagent?.protonCapacity ?? row.capacity),
-      protonsCharged: 0,
-      fullCharge: 0,
-      // Its limit says what eats it in practice, so the gas that leaves must not pull once more.
-      gas: null,
-      isSolvent: false,
-      isSolventIon: false,
-    },
-  ];
 }
 
 function gasOf(steps: readonly ProtonStep[], { tables, medium }: Build): FlaskAcid['gas'] {
