@@ -27,6 +27,8 @@ export interface Rule extends ParentRow {
 export interface RuleSite extends Site {
   readonly rule: Rule;
   readonly equivalents: number;
+  /** All atoms of the class, this one included. */
+  readonly equals: readonly number[];
   /** Whether a mark :1 stands on this site or its equals. */
   readonly marked: boolean;
 }
@@ -93,22 +95,24 @@ export function sitesByRule(
   const classes = new Map<number, number>();
   for (const fragment of graph.fragments)
     for (const [atom, rank] of symmetryClasses(graph, fragment)) classes.set(atom, rank);
-  const groups = new Map<string, { atom: number; rule: Rule; count: number }>();
+  const groups = new Map<string, { atom: number; rule: Rule; equals: number[] }>();
   for (const { atom, rule } of best.values()) {
     const key = `${rule.kind} ${classes.get(atom)}`;
     const known = groups.get(key);
-    groups.set(key, known === undefined ? { atom, rule, count: 1 } : { ...known, count: known.count + 1 });
+    if (known === undefined) groups.set(key, { atom, rule, equals: [atom] });
+    else known.equals.push(atom);
   }
   const marked = new Set(
     graph.atoms.filter(({ mapNumber }) => mapNumber === 1).map(({ index }) => classes.get(index)),
   );
-  const sites = [...groups.values()].map(({ atom, rule, count }) => ({
+  const sites = [...groups.values()].map(({ atom, rule, equals }) => ({
     atom,
     kind: rule.kind,
     group: rule.id,
     family: rule.family,
     rule,
-    equivalents: count,
+    equivalents: equals.length,
+    equals,
     marked: marked.has(classes.get(atom)),
   }));
   return { graph, sites };

@@ -5,6 +5,7 @@
  * Units: pK units per unit charge.
  * Sources: stepwise constants of dicarboxylic acids, diamines and amino acids (Perrin, Dempsey and Serjeant 1981), worked out.
  */
+import { coresOf } from './cores.ts';
 import { bondDistances } from './distances.ts';
 import type { Graph } from './graph.ts';
 
@@ -14,6 +15,21 @@ const BY_DISTANCE = [8.5, 4.6, 2.4, 1.15, 0.72, 0.45, 0.33, 0.27, 0.22, 0.18, 0.
 const FURTHER_WAY = 0.6;
 /** Beyond this no pull is felt. */
 const FARTHEST = 14;
+
+/** Positive charge on an aromatic base also ends its donation into the ring: its effect on others of the ring grows. */
+const DONATION_ENDS = 1.7;
+/** A site counts as one of a ring system up to this many bonds from it. */
+const CLOSE = 2;
+
+/** How much stronger an aromatic base acts on a site of the same ring system. */
+export function donationFactor(graph: Graph, first: number, second: number): number {
+  const near = (site: number) => coresOf(graph, site).filter(({ reach }) => reach <= CLOSE);
+  const others = near(second);
+  const shared = near(first).some(({ atoms, anchor }) =>
+    others.some((other) => atoms.has(other.anchor) && other.atoms.has(anchor)),
+  );
+  return shared ? DONATION_ENDS : 1;
+}
 
 /** Interaction of unit charges at two atoms; 0 where they belong to different fragments. */
 export function chargePull(graph: Graph, first: number, second: number): number {

@@ -9,7 +9,7 @@
  *  2. A measured value is returned unchanged on its own scale.
  */
 import type { ScaleId } from '../tables/rows.ts';
-import { chargePull } from './charges.ts';
+import { chargePull, donationFactor } from './charges.ts';
 import type { Constant, Couple, OwnValue, Perceived, ProtonStep } from './couple.ts';
 import { type EstimatorTables, estimateInWater } from './estimate.ts';
 import type { Graph } from './graph.ts';
@@ -46,7 +46,7 @@ export interface MoleculeConstants {
 }
 
 /** Couples outside this range of water never change their state in a flask together with others. */
-const LOWEST_COUPLED = -6;
+const LOWEST_COUPLED = -3;
 const HIGHEST_COUPLED = 21;
 const WATER = 'water';
 /** Opposite charges pull less than equal ones push, as amino acids against diamines show. */
@@ -66,7 +66,10 @@ export function coupleConstants(
   if (perceived.graph === null)
     return { couples: perceived.couples.map(() => null), steps: perceived.components.map(() => []) };
   const measured = options.estimateOnly ? [] : sources.measured(perceived);
-  const own = (options.own ?? []).flatMap((value) => ownConstants(perceived, value));
+  // The house's values go in first, so that the plan's have the last word.
+  const own = [...(options.own ?? [])]
+    .sort((a, b) => rank(a) - rank(b))
+    .flatMap((value) => ownConstants(perceived, value));
   const water = estimatedSteps(perceived, neutralForm(perceived.graph).graph, tables);
   const steps =
     scale === WATER
@@ -76,6 +79,10 @@ export function coupleConstants(
     couples: perceived.couples.map((couple) => reported(couple, steps[couple.component] ?? [])),
     steps,
   };
+}
+
+function rank({ origin }: OwnValue): number {
+  return origin === 'house' ? 0 : 1;
 }
 
 /** Every value on another scale stands alone; further steps of one couple are carried from water. */
@@ -213,7 +220,11 @@ function estimatedSteps(perceived: Perceived, graph: Graph, tables: EstimatorTab
       (first, second) => {
         const [one, other] = [places[first]!, places[second]!];
         const opposite = one.site.kind === other.site.kind ? 1 : OPPOSITE_SHARE;
-        return opposite * chargePull(graph, one.atom, other.atom);
+        const donation =
+          one.site.kind === 'acid' && other.site.kind === 'acid'
+            ? 1
+            : donationFactor(graph, one.atom, other.atom);
+        return opposite * donation * chargePull(graph, one.atom, other.atom);
       },
     ).map(
       ({ pK, couple }): ProtonStep => ({

@@ -34,7 +34,7 @@ export interface EstimatorTables {
 interface Estimator {
   readonly substituents: Substituents;
   readonly values: ReadonlyMap<string, number>;
-  readonly families: ReadonlyMap<string, number>;
+  readonly families: ReadonlyMap<string, SpreadRow>;
   readonly variances: ReadonlyMap<string, number>;
   readonly parents: ReadonlyMap<string, ParentRow>;
 }
@@ -61,8 +61,9 @@ export function estimateInWater(
 ): Constant | null {
   const estimator = estimatorOf(tables);
   const parent = estimator.parents.get(site.group);
-  const familySd = estimator.families.get(`${site.kind[0]}.${site.family}`);
-  if (familySd === undefined || isBeyondFit(site, parent)) return fromParent(parent);
+  const family = estimator.families.get(`${site.kind[0]}.${site.family}`);
+  const familiar = family !== undefined && (FEW < family.n || estimator.values.has(`group:${site.group}`));
+  if (!familiar || isBeyondFit(site, parent)) return fromParent(parent);
   const terms = termsOf(graph, site, estimator.substituents);
   let value = MIDDLE;
   let novelty = 0;
@@ -78,7 +79,7 @@ export function estimateInWater(
     }
   }
   const statistical = Math.log10(equivalents) * (site.kind === 'acid' ? -1 : 1);
-  const sd = Math.sqrt(familySd ** 2 + novelty * (estimator.variances.get('novelty') ?? 1));
+  const sd = Math.sqrt(family.value ** 2 + novelty * (estimator.variances.get('novelty') ?? 1));
   return {
     value: value + statistical,
     sd,
@@ -99,6 +100,8 @@ function isBeyondFit(site: Site, parent: ParentRow | undefined): boolean {
   );
 }
 
+/** A family with no more molecules in the fit speaks only for groups that the fit has met. */
+const FEW = 4;
 /** Above this pKa no carbon acid was measured in water itself. */
 const CARBON_LIMIT = 22;
 
@@ -165,9 +168,7 @@ function estimatorOf(tables: EstimatorTables): Estimator {
   const made: Estimator = {
     substituents: readSubstituents(tables.substituents),
     values: new Map(tables.terms.map(({ name, value }) => [name, value])),
-    families: new Map(
-      tables.spreads.filter(({ kind }) => kind === 'family').map(({ name, value }) => [name, value]),
-    ),
+    families: new Map(tables.spreads.filter(({ kind }) => kind === 'family').map((row) => [row.name, row])),
     variances: new Map(
       tables.spreads.filter(({ kind }) => kind === 'term').map(({ name, value }) => [name, value]),
     ),

@@ -37,6 +37,9 @@ const REACH_RESPONSE = [5.5, 2.4, 1.2, 0.5, 0.25];
 /** No family answers to atoms three or more bonds away by more than this. */
 const FAR_RESPONSE = 1.6;
 
+/** The response of phenols, in which corrections of single families are counted. */
+const PHENOL_RESPONSE = 2.4;
+
 /** How strongly each family answers to its surroundings, in units of phenols; families that are not named answer with 1. */
 const FAMILY_RESPONSE: Readonly<Record<string, number>> = {
   'carboxylic-acid': 0.5,
@@ -71,13 +74,14 @@ export function termsOf(graph: Graph, site: Site, substituents: Substituents): T
   const terms: Term[] = [];
   const series = `${site.kind[0]}.${site.family}`;
   const answer = FAMILY_RESPONSE[site.family] ?? 1;
+  const addRaw = (name: string, factor: number) => terms.push({ name, factor });
   const add = (name: string, factor: number) =>
-    terms.push({ name, factor: name.includes(`:${series}`) ? factor * answer : factor });
+    addRaw(name, name.includes(`:${series}`) ? factor * answer : factor);
   terms.push({ name: `series:${series}`, factor: 1 });
   add(`group:${site.group}`, 1);
   for (const depth of [1, 3]) add(`near${depth}:${site.kind[0]}${unfolded(graph, site.atom, -1, depth)}`, 1);
   const cores = coresOf(graph, site.atom);
-  for (const core of cores) addCore(graph, site, core, series, substituents, add);
+  for (const core of cores) addCore(graph, site, core, series, substituents, addRaw);
   addAcceptors(graph, site, series, add);
   addChain(graph, site, series, answer, cores, add);
   addRings(graph, site, series, add);
@@ -106,7 +110,7 @@ function addCore(
   for (const [atom, place] of core.places) {
     const kind = kinds[atom]!;
     if (kind !== 'c') {
-      add(`aza:${line}.${place}.${kind}`, 1);
+      add(`aza:${line}.${place}.${kind}`, response / PHENOL_RESPONSE);
       add(`aza:*.${place}.${kind}`, response);
     }
     for (const next of graph.atoms[atom]!.neighbours) {
@@ -122,15 +126,15 @@ function addCore(
       total += place === 'm' || place[2] === 'n' ? sigma.m : sigma.p;
       if (place === 'o') {
         ortho.push(kinds[next]!);
-        addBay(kinds[next]!, nearest, line, add);
+        addBay(kinds[next]!, nearest, standing, add);
       }
     }
   }
   add(`bend:${line}`, total * Math.abs(total));
   add('bendany:', response * total * Math.abs(total));
   if (2 <= ortho.length) {
-    add(`crowd:${line}`, 1);
-    add(`crowd:${line}.${ortho.sort().join('.')}`, 1);
+    add(`crowd:${line}`, response / PHENOL_RESPONSE);
+    add(`crowd:${line}.${ortho.sort().join('.')}`, response / PHENOL_RESPONSE);
   }
   for (const ring of graph.rings) addFusion(graph, core, ring, line, response, add);
 }
@@ -142,10 +146,10 @@ interface Standing {
 }
 
 /** An ortho neighbour beside a nitrogen that may carry alkyl groups: they turn it out of the ring's plane. */
-function addBay(kind: string, nearest: string, line: string, add: Add): void {
+function addBay(kind: string, nearest: string, { line, response }: Standing, add: Add): void {
   if (!/^N[0-2]$/.test(nearest)) return;
-  add(`bay:${line}.${nearest}`, 1);
-  add(`bay:${line}.${nearest}.${kind}`, 1);
+  add(`bay:${line}.${nearest}`, response / PHENOL_RESPONSE);
+  add(`bay:${line}.${nearest}.${kind}`, response / PHENOL_RESPONSE);
 }
 
 /** Resonance class of a place: ortho, meta, para, beside, across, or reached or not reached across a fusion. */
@@ -181,14 +185,14 @@ function addSubstituent(
   for (const depth of [0, 1, 2]) {
     const key = unfolded(graph, root, ringAtom, depth);
     if (depth === 0) add(`sub0:*.${resonance(place)}.${key}`, response);
-    add(`sub${depth}:${line}.${place}.${key}`, 1);
+    add(`sub${depth}:${line}.${place}.${key}`, response / PHENOL_RESPONSE);
   }
 }
 
 /** A saturated ring closed over the core, or the chain to the site itself. */
 function addTie(graph: Graph, root: number, { place, line, response }: Standing, add: Add): void {
   const kind = atomKinds(graph)[root]!;
-  add(`tied:${line}.${place}.${kind}`, 1);
+  add(`tied:${line}.${place}.${kind}`, response / PHENOL_RESPONSE);
   add(`tied:*.${place}.${kind}`, response);
 }
 
@@ -220,7 +224,7 @@ function addFusion(
       : shared.map((atom) => core.places.get(atom)!);
   const nature = ring.every((atom) => graph.atoms[atom]!.aromatic) ? 'a' : 's';
   const key = `${nature}${ring.length}.${[...places].sort().slice(0, 2).join('')}`;
-  add(`fused:${line}.${key}`, 1);
+  add(`fused:${line}.${key}`, response / PHENOL_RESPONSE);
   add(`fused:*.${key}`, response);
 }
 
