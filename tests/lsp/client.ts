@@ -31,6 +31,8 @@ export interface TestClient {
   request<Answer>(method: string, params: unknown): Promise<Answer>;
   /** The diagnostics of a version, as soon as they are there. */
   diagnostics(uri: string, version: number): Promise<Diagnostic[]>;
+  /** What was last told about a document. */
+  last(uri: string): Published | undefined;
   stop(): Promise<void>;
 }
 
@@ -137,7 +139,7 @@ export async function startClient(
           reject(new Error(`no diagnostics of version ${version} of ${uri}; log: ${log.join('\n')}`));
         }, 10_000);
         const look = () => {
-          const found = published.findLast((each) => each.uri === uri && each.version === version);
+          const found = published.filter((each) => each.uri === uri && each.version === version).at(-1);
           if (found === undefined) return;
           clearTimeout(timer);
           waiting.delete(look);
@@ -147,6 +149,7 @@ export async function startClient(
         look();
       });
     },
+    last: (uri) => published.filter((each) => each.uri === uri).at(-1),
     async stop() {
       const ended = new Promise((resolve) => child.once('exit', resolve));
       await connection.sendRequest('shutdown');

@@ -73,7 +73,7 @@ describe('diagnostics', () => {
     client.change(uri, range(4, 10, 15), 'Na');
     client.close(uri);
     await client.request('textDocument/foldingRange', { textDocument: { uri } });
-    await expect.poll(() => client.published.findLast((each) => each.uri === uri)?.diagnostics).toEqual([]);
+    await expect.poll(() => client.last(uri)?.diagnostics).toEqual([]);
   });
 
   it('are never those of a version that is no longer there', async () => {
@@ -114,7 +114,7 @@ describe('diagnostics', () => {
       );
       client.close(twin);
     }
-    expect(client.published.findLast((each) => each.uri === uri)?.diagnostics.length).toBeGreaterThan(1);
+    expect(client.last(uri)?.diagnostics.length).toBeGreaterThan(1);
   });
 
   it('wait for a save, or stay away, where the settings say so', async () => {
@@ -129,16 +129,14 @@ describe('diagnostics', () => {
     expect(checks(await client.diagnostics(uri, version))).toEqual(['unknown-name']);
     client.settings = { run: 'off' };
     void client.connection.sendNotification('workspace/didChangeConfiguration', { settings: null });
-    await expect.poll(() => client.published.findLast((each) => each.uri === uri)?.diagnostics).toEqual([]);
+    await expect.poll(() => client.last(uri)?.diagnostics).toEqual([]);
     client.settings = { run: 3, severities: { 'unknown-name': 'off', nonsense: 'error' } };
     void client.connection.sendNotification('workspace/didChangeConfiguration', { settings: null });
     await expect.poll(() => client.log.join('\n')).toContain('lyate.run cannot be 3');
     expect(client.log.join('\n')).toContain('nonsense');
     client.settings = {};
     void client.connection.sendNotification('workspace/didChangeConfiguration', { settings: null });
-    await expect
-      .poll(() => checks(client.published.findLast((each) => each.uri === uri)?.diagnostics ?? []))
-      .toEqual(['unknown-name']);
+    await expect.poll(() => checks(client.last(uri)?.diagnostics ?? [])).toEqual(['unknown-name']);
     client.close(uri);
   });
 
@@ -161,18 +159,14 @@ describe('use', () => {
     expect(await client.diagnostics(uri, 1)).toEqual([]);
     const shared = at('shared.lyate');
     client.open(shared, 'compound L = CC(=O)C\n');
-    await expect
-      .poll(() => checks(client.published.findLast((each) => each.uri === uri)!.diagnostics))
-      .toEqual(['unknown-name']);
+    await expect.poll(() => checks(client.last(uri)!.diagnostics)).toEqual(['unknown-name']);
     client.close(shared);
-    await expect.poll(() => client.published.findLast((each) => each.uri === uri)!.diagnostics).toEqual([]);
+    await expect.poll(() => client.last(uri)!.diagnostics).toEqual([]);
     writeFileSync(join(folder, 'shared.lyate'), 'compound M = CC(=O)C\n');
     void client.connection.sendNotification('workspace/didChangeWatchedFiles', {
       changes: [{ uri: shared, type: 2 }],
     });
-    await expect
-      .poll(() => checks(client.published.findLast((each) => each.uri === uri)!.diagnostics))
-      .toEqual(['unknown-name']);
+    await expect.poll(() => checks(client.last(uri)!.diagnostics)).toEqual(['unknown-name']);
   });
 
   it('reads nothing outside the root', async () => {
