@@ -59,9 +59,24 @@ export function formShares(pKa: readonly number[], pH: number): number[] {
   return shares;
 }
 
-/** Mean number of protons held by an acid at a pH. */
+/** Mean number of protons held by an acid at a pH; the root finder lives on it, so it makes no arrays. */
 export function meanProtons(pKa: readonly number[], pH: number): number {
-  return formShares(pKa, pH).reduce((sum, share, held) => sum + held * share, 0);
+  let term = 0;
+  let largest = 0;
+  for (let step = pKa.length - 1; 0 <= step; step--) {
+    term += pKa[step]! - pH;
+    if (largest < term) largest = term;
+  }
+  let weight = 10 ** -largest;
+  let protons = 0;
+  term = 0;
+  for (let held = 1; held <= pKa.length; held++) {
+    term += pKa[pKa.length - held]! - pH;
+    const share = 10 ** (term - largest);
+    weight += share;
+    protons += held * share;
+  }
+  return protons / weight;
 }
 
 /** For each step, lowest first, the share of molecules in which its proton is still there. */

@@ -17,7 +17,8 @@ import type { ConstantsIn, Contents, CoupleState, FlaskState, Ingredient, Medium
 import { type FlaskAcid, type FlaskSystem, type Participation, systemOf } from './system.ts';
 
 const MOST_TURNS = 100;
-const FIXED = 1e-13;
+/** mol/L within which the ionic strength has settled; it moves the pH by less than 1e-10. */
+const FIXED = 1e-11;
 /** Share of an organometallic or hydride that must be left for it to be the one that reacts. */
 const LEFT_OVER = 0.01;
 const EDGE = 1e-6;
