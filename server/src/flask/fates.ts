@@ -86,8 +86,7 @@ export function fatesOf(solved: Solved): ReagentFate[] {
   for (const transfer of ledgerOf(solved)) {
     if (transfer.isIdentity) continue;
     const sd = differenceSd(transfer.from, transfer.to, solved.medium.scaleSd);
-    const gap = transfer.to.constant.value - transfer.from.constant.value;
-    const doubt = normalBelow(-gap / Math.max(sd, Number.MIN_VALUE));
+    const doubt = normalBelow(-transfer.gap / Math.max(sd, Number.MIN_VALUE));
     const add = (as: 'base' | 'acid') => {
       const [own, other] = as === 'base' ? [transfer.to, transfer.from] : [transfer.from, transfer.to];
       const isSolvent = as === 'base' ? transfer.toSolvent : transfer.fromSolvent;

@@ -16,13 +16,16 @@ import { formsIonPair, LEAST_ION_PAIR_SD } from './allowances/ion-pair.ts';
 import { isHelpedByMetal } from './allowances/lewis-acid.ts';
 import { hasPhaseTransfer } from './allowances/phase-transfer.ts';
 import { HIGHEST_PH, LOWEST_PH, solveBalance, stepShares } from './balance.ts';
+import { constantInWater } from './ion-pairing.ts';
 import { rateOf } from './kinetics.ts';
 import { isSolidBase, mediumOf } from './medium.ts';
 import { normalBelow } from './numbers.ts';
 import { broughtBy, candidatesIn, capacityOf, isLevelled, partnerOf } from './partner.ts';
 import { type Direction, type Placed, placeSite } from './placing.ts';
+import { heldInSalt } from './salts.ts';
 import { chargedShare, type Solved } from './solve.ts';
 import type { Allowance, ConstantsIn, Contents, Ingredient, Site, Verdict } from './state.ts';
+import type { FlaskSystem } from './system.ts';
 import { differenceSd } from './uncertainty.ts';
 
 export interface Intent {
@@ -88,7 +91,8 @@ function chooseCouple(
   constantsIn: ConstantsIn,
 ): Couple | null {
   const { scale } = mediumOf(contents);
-  const known = constantsIn(molecule!, scale, tables, own ? { own } : {}).couples;
+  const { couples: known, steps } = constantsIn(molecule!, scale, tables, own ? { own } : {});
+  const holds = heldCouples(molecule!, steps);
   const loses = direction === 'deprotonate';
   let best: { couple: Couple; value: number } | null = null;
   const candidates = couples.length === 0 ? molecule!.couples.map((_, place) => place) : couples;
@@ -97,11 +101,28 @@ function chooseCouple(
     const constant = known[place];
     if (couple === undefined || constant == null) continue;
     // Unless a site is named, only one that can still move is meant.
-    if (couples.length === 0 && couple.holdsProton !== loses) continue;
+    if (couples.length === 0 && holds(couple) !== loses) continue;
     const isEasier = best === null || (loses ? constant.value < best.value : best.value < constant.value);
     if (isEasier) best = { couple, value: constant.value };
   }
   return (best as { couple: Couple } | null)?.couple ?? null;
+}
+
+/** Which couples hold a proton once acids and bases of the same salt have met. */
+function heldCouples(
+  { components }: Perceived,
+  steps: readonly (readonly ProtonStep[])[],
+): (couple: Couple) => boolean {
+  const drawn = components.map((_, place) => {
+    const list = [...(steps[place] ?? [])].sort((a, b) => a.constant.value - b.constant.value);
+    return { steps: list, held: list.filter(({ couple }) => couple.holdsProton).length };
+  });
+  const inSalt = heldInSalt(drawn);
+  return ({ component, kind, holdsProton }) => {
+    const gained = (inSalt[component] ?? 0) - (drawn[component]?.held ?? 0);
+    if (0 < gained && kind === 'base') return true;
+    return gained < 0 && kind === 'acid' ? false : holdsProton;
+  };
 }
 
 function weigh(
@@ -132,6 +153,7 @@ function weigh(
       logK: NO_PARTNER,
       sd,
       extent,
+      margin: NO_PARTNER,
       probability: sure,
       partner,
       broughtBy: null,
@@ -181,6 +203,7 @@ function weigh(
     logK: pair.logK,
     sd: pair.sd,
     extent,
+    margin,
     probability,
     partner,
     broughtBy: broughtBy(placed, partner, loses),
@@ -199,11 +222,12 @@ function pick({ couple, constant }: ProtonStep): { couple: Couple; constant: Con
 function compare(
   site: Site,
   partner: Site,
-  { contents, rest }: Placed,
+  placed: Placed,
   loses: boolean,
   tables: Tables,
   constantsIn: ConstantsIn,
 ): { logK: number; sd: number; shift: number; allowances: Allowance[] } {
+  const { contents, rest } = placed;
   const { medium } = rest;
   const allowances: Allowance[] = [];
   const [acid, base] = loses ? [site, partner] : [partner, site];
@@ -212,22 +236,25 @@ function compare(
   const other = contents.ingredients.find(({ id }) => id === partner.ingredient);
   if (other !== undefined && isSolidBase(other) && !medium.protic) allowances.push('surface');
   if (!formsIonPair(acid.couple, base.couple, medium)) return { logK: plain, sd, shift: 0, allowances };
-  const inWater = (one: Site) => {
-    const ingredient = contents.ingredients.find(({ id }) => id === one.ingredient)!;
-    const { couples } = constantsIn(
-      ingredient.molecule!,
-      'water',
-      tables,
-      ingredient.own ? { own: ingredient.own } : {},
-    );
-    return couples[ingredient.molecule!.couples.indexOf(one.couple)] ?? null;
-  };
+  const inWater = (one: Site) => constantInWater(one, contents, tables, constantsIn);
   const [acidInWater, baseInWater] = [inWater(acid), inWater(base)];
   if (acidInWater === null || baseInWater === null) return { logK: plain, sd, shift: 0, allowances };
-  allowances.push('ion-pair');
   const logK = baseInWater.value - acidInWater.value;
+  if (logK < plain) return { logK: plain, sd, shift: 0, allowances };
+  allowances.push('ion-pair');
   const pairSd = Math.hypot(acidInWater.sd, baseInWater.sd);
-  return { logK, sd: Math.max(LEAST_ION_PAIR_SD, pairSd), shift: logK - plain, allowances };
+  // The flask may have paired this acid already.
+  const done = -shiftOf(placed.full.system, acid);
+  return { logK, sd: Math.max(LEAST_ION_PAIR_SD, pairSd), shift: logK - plain - done, allowances };
+}
+
+/** What a flask adds to the constant of a site. */
+function shiftOf({ acids }: FlaskSystem, { ingredient, couple }: Site): number {
+  for (const acid of acids) {
+    const step = acid.ingredient === ingredient ? acid.steps.findIndex((one) => one.couple === couple) : -1;
+    if (step !== -1) return acid.shifts[step]!;
+  }
+  return 0;
 }
 
 /** Share of the site that has moved at the answer of the whole flask. */

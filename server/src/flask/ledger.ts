@@ -13,6 +13,8 @@ export interface Transfer {
   readonly from: Site;
   readonly to: Site;
   readonly mol: number;
+  /** Units of pKa downhill, layers and ion pairs counted. */
+  readonly gap: number;
   readonly fromSolvent: boolean;
   readonly toSolvent: boolean;
   /** Between the solvent and its own ion that a reagent brought: hydroxide in water. Nothing is lost by it. */
@@ -23,6 +25,8 @@ interface Account {
   readonly site: Site;
   readonly isSolvent: boolean;
   readonly isSolventIon: boolean;
+  /** pKa with the shifts of this flask. */
+  readonly strength: number;
   mol: number;
 }
 
@@ -40,14 +44,15 @@ export function ledgerOf({ system, shares }: Solved): Transfer[] {
         site: { ingredient: acid.ingredient, couple, constant },
         isSolvent: acid.isSolvent,
         isSolventIon: acid.isSolventIon,
+        strength: constant.value + acid.shifts[step]!,
         mol: Math.abs(moved),
       };
       if (moved < 0) givers.push(account);
       if (0 < moved) takers.push(account);
     });
   });
-  givers.sort((a, b) => a.site.constant.value - b.site.constant.value);
-  takers.sort((a, b) => b.site.constant.value - a.site.constant.value);
+  givers.sort((a, b) => a.strength - b.strength);
+  takers.sort((a, b) => b.strength - a.strength);
   return settle(givers, takers);
 }
 
@@ -64,6 +69,7 @@ function settle(givers: readonly Account[], takers: readonly Account[]): Transfe
           from: giver.site,
           to: taker.site,
           mol,
+          gap: taker.strength - giver.strength,
           fromSolvent: giver.isSolvent,
           toSolvent: taker.isSolvent,
           isIdentity: (giver.isSolvent && taker.isSolventIon) || (giver.isSolventIon && taker.isSolvent),

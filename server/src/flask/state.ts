@@ -127,6 +127,8 @@ export interface Verdict {
   readonly sd: number;
   /** Share of the intended sites that the transfer converts at these amounts, 0 … 1. */
   readonly extent: number;
+  /** Units that log K could lose before the extent falls to half of what the amounts allow; negative: units short. */
+  readonly margin: number;
   /** P(extent < 50 %), from the uncertainties; where amounts limit, of half of what they allow. */
   readonly probability: number;
   readonly kinetics: 'instant' | 'slow' | 'dead';

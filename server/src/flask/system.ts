@@ -12,9 +12,11 @@ import type { Tables } from '../tables/tables.ts';
 import { PKA_OF_HYDRONIUM, pKaOfWater } from './balance.ts';
 import { coupledSteps } from './carbon-sites.ts';
 import { distribution } from './distribution.ts';
+import { withIonPairs } from './ion-pairing.ts';
 import { rateOf } from './kinetics.ts';
 import { isSolidBase, isWater, usable } from './medium.ts';
 import { hydrideAcid, surfaceAcid } from './practical-bases.ts';
+import { heldInSalt } from './salts.ts';
 import type { ConstantsIn, Contents, Ingredient, Medium, Site } from './state.ts';
 import { atTemperature } from './temperature.ts';
 import { pKwOfLiquid } from './water-constant.ts';
@@ -25,7 +27,7 @@ export interface FlaskAcid {
   readonly component: number;
   /** In the order in which the protons leave, lowest constant first. */
   readonly steps: readonly ProtonStep[];
-  /** Added to each step's value for the shares of the layers, lowest step first. */
+  /** Added to each step's value for the shares of the layers and for ion pairs, lowest step first. */
   readonly shifts: readonly number[];
   readonly amount: number;
   readonly protonsCharged: number;
@@ -105,7 +107,8 @@ export function systemOf(
     const total = solventMol.get(medium.solvent!.name)!;
     return { ...acid, amount: total };
   });
-  return { acids: withSolvent, spectatorCharges, pKw };
+  const paired = withIonPairs(withSolvent, contents, medium, tables, constantsIn);
+  return { acids: paired, spectatorCharges, pKw };
 }
 
 /** All couples of the flask with the constants they have in it, as charged. */
@@ -210,14 +213,17 @@ function ingredientAcids(one: Ingredient, build: Build): { acids: FlaskAcid[]; c
   const { steps } = constantsIn(one.molecule, medium.scale, tables, one.own ? { own: one.own } : {});
   const acids: FlaskAcid[] = [];
   let charges = 0;
-  one.molecule.components.forEach((component, place) => {
+  const meant = build.participation.intended?.find(({ ingredient }) => ingredient === one.id)?.couple ?? null;
+  const drawn = one.molecule.components.map((component, place) => {
     const all = [...(steps[place] ?? [])].sort((a, b) => a.constant.value - b.constant.value);
-    const protonsCharged = all.filter(({ couple }) => couple.holdsProton).length;
-    const fullCharge = component.charge + all.length - protonsCharged;
-    const meant =
-      build.participation.intended?.find(({ ingredient }) => ingredient === one.id)?.couple ?? null;
     const moving = all.filter((step) => !step.couple.holdsProton || moves(step, one, build));
     const kept = coupledSteps(moving, one.molecule!, meant);
+    const lacking = all.filter(({ couple }) => !couple.holdsProton).length;
+    const held = kept.filter(({ couple }) => couple.holdsProton).length;
+    return { component, all, steps: kept, held, fullCharge: component.charge + lacking };
+  });
+  const inSalt = heldInSalt(drawn);
+  drawn.forEach(({ component, all, steps: kept, fullCharge }, place) => {
     if (kept.length === 0) {
       charges += amount * component.charge ** 2;
       return;
@@ -239,11 +245,11 @@ function ingredientAcids(one: Ingredient, build: Build): { acids: FlaskAcid[]; c
     }));
     acids.push({
       ingredient: one.id,
-      component: place,
+      component: component.index,
       steps: placed,
       shifts: distribution(one, component, placed.length, fullCharge, medium),
       amount,
-      protonsCharged: kept.filter(({ couple }) => couple.holdsProton).length,
+      protonsCharged: inSalt[place]!,
       fullCharge,
       gas: gasOf(kept, build),
       isSolvent: false,
