@@ -4,7 +4,7 @@
  * Knows: rows of `heats` and `enthalpies`, heat capacities of solvents.  Must not know: text.
  * Units: kJ (negative where heat is set free), kelvin.
  * Accuracy: enthalpies in water stand for all solvents; a figure for planning, never a safety assessment.
- * Invariant: nothing added, nothing heated; twice the flask, the same rise.   (tests/flask/heat.test.ts)
+ * Invariant: nothing added, nothing heated; twice the flask, the same rise.   (tests/flask/shares.test.ts)
  */
 import type { HeatRow } from '../tables/rows.ts';
 import type { Tables } from '../tables/tables.ts';

@@ -117,12 +117,14 @@ function heldCouples(
     const list = [...(steps[place] ?? [])].sort((a, b) => a.constant.value - b.constant.value);
     return { steps: list, held: list.filter(({ couple }) => couple.holdsProton).length };
   });
-  const inSalt = heldInSalt(drawn);
-  return ({ component, kind, holdsProton }) => {
-    const gained = (inSalt[component] ?? 0) - (drawn[component]?.held ?? 0);
-    if (0 < gained && kind === 'base') return true;
-    return gained < 0 && kind === 'acid' ? false : holdsProton;
-  };
+  const gained = new Set<Couple>();
+  const lost = new Set<Couple>();
+  for (const [place, now] of heldInSalt(drawn).entries()) {
+    const { steps: list, held } = drawn[place]!;
+    for (let protons = held; protons < now; protons++) gained.add(list[list.length - 1 - protons]!.couple);
+    for (let protons = held; now < protons; protons--) lost.add(list[list.length - protons]!.couple);
+  }
+  return (couple) => gained.has(couple) || (couple.holdsProton && !lost.has(couple));
 }
 
 function weigh(

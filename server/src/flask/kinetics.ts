@@ -2,7 +2,7 @@
  * Whether a proton moves at all in the time a step takes: most do at once, many on carbon never do.
  *
  * Knows: rows of `kinetics`, roles and names of what is in the flask.  Must not know: constants, text.
- * Invariant: the first row that fits holds; a couple that no row names moves at once.   (tests/flask/kinetics.test.ts)
+ * Invariant: the first row that fits holds; a couple that no row names moves at once.   (tests/flask/fates.test.ts)
  */
 import type { Couple } from '../chemistry/couple.ts';
 import { foldName } from '../tables/names.ts';

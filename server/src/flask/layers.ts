@@ -4,7 +4,7 @@
  * Knows: calculated log P of neutral forms, stepwise constants.  Must not know: plans, text.
  * Units: litre; log P and log D decimal.
  * Accuracy: an estimate; calculated log P errs by about half a unit and stands for any organic solvent.
- * Invariants: shares lie between 0 and 1; more organic solvent or more portions never leave more in water.   (tests/flask/layers.test.ts)
+ * Invariants: shares lie between 0 and 1; more organic solvent or more portions never leave more in water.   (tests/flask/shares.test.ts)
  */
 import type { OwnValue, Perceived } from '../chemistry/couple.ts';
 import type { Tables } from '../tables/tables.ts';

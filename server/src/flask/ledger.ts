@@ -4,7 +4,7 @@
  *
  * Knows: solved flasks.  Must not know: intended transfers, findings.
  * Units: mol.
- * Invariant: what is given equals what is taken, and no entry exceeds what its couple moved.   (tests/flask/ledger.test.ts)
+ * Invariant: what is given equals what is taken, and no entry exceeds what its couple moved.   (tests/flask/fates.test.ts)
  */
 import { chargedShare, type Solved } from './solve.ts';
 import type { Site } from './state.ts';

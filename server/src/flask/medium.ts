@@ -3,7 +3,7 @@
  *
  * Knows: rows of solvents, volumes.  Must not know: constants, structures, text.
  * Units: litre.
- * Invariants: scaling all volumes changes nothing but the volumes; a flask without volumes gets one.   (tests/flask/medium.test.ts)
+ * Invariants: scaling all volumes changes nothing but the volumes; a flask without volumes gets one.   (tests/flask/fates.test.ts)
  * The rules for mixtures are common practice: a fifth of water or alcohol by volume already levels strong bases.
  */
 import type { SolventRow } from '../tables/rows.ts';

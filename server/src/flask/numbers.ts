@@ -2,7 +2,7 @@
  * The little arithmetic that the flask shares: a monotone root and the normal distribution.
  *
  * Must not know: chemistry.
- * Invariant: both are plain functions of their arguments, so the same question has the same bits.   (tests/flask/numbers.test.ts)
+ * Invariant: both are plain functions of their arguments, so the same question has the same bits.   (tests/flask/judge.test.ts)
  */
 
 const MOST_HALVINGS = 200;

@@ -4,7 +4,7 @@
  * Knows: systems of acids.  Must not know: intended transfers, text.
  * Units: mol, litre, kelvin.
  * Invariants:
- *  1. The protons bound equal the protons charged within rounding.            (tests/flask/solve.test.ts)
+ *  1. The protons bound equal the protons charged within rounding.            (tests/flask/judge.test.ts)
  *  2. The same contents give the same bits; nothing is remembered.             (same)
  *  3. Ionic strength is iterated to a fixed point in a set number of turns.    (same)
  */

@@ -2,7 +2,7 @@
  * The forms of a molecule over pH: for each component the share of every state of protonation.
  *
  * Knows: stepwise constants.  Must not know: flasks, text.
- * Invariant: the shares of a component add up to one at every pH.   (tests/flask/speciate.test.ts)
+ * Invariant: the shares of a component add up to one at every pH.   (tests/flask/shares.test.ts)
  */
 import type { OwnValue, Perceived } from '../chemistry/couple.ts';
 import type { ScaleId } from '../tables/rows.ts';

@@ -5,7 +5,7 @@
  * bases act from their surface, hydrides by what their class takes, and in two layers the neutral forms share out.
  * Knows: ingredients, rows.  Must not know: intended transfers, verdicts, text.
  * Units: mol; pKa on the medium's scale.
- * Invariants: ids of ingredients are kept; an ingredient without usable amount or structure gives nothing.   (tests/flask/system.test.ts)
+ * Invariants: ids of ingredients are kept; an ingredient without usable amount or structure gives nothing.   (tests/flask/judge.test.ts)
  */
 import type { Component, Constant, Couple, Perceived, ProtonStep } from '../chemistry/couple.ts';
 import type { Tables } from '../tables/tables.ts';
@@ -175,10 +175,11 @@ function solventStep(
   { molecule }: Ingredient,
   kind: Couple['kind'],
   value: number,
-  { medium }: Build,
+  build: Build,
 ): ProtonStep {
+  const { medium } = build;
   const row = medium.solvent!;
-  const known = molecule?.couples.find((couple) => couple.kind === kind);
+  const known = ownCouple(molecule, kind, build);
   const couple: Couple = known ?? {
     atom: 0,
     element: '',
@@ -201,6 +202,19 @@ function solventStep(
     hops: [{ what, value, sd, sources: row.sources }],
   };
   return { couple, constant };
+}
+
+/** Which of a solvent's couples is meant by its own constant: on a heteroatom first, never a dead one. */
+function ownCouple(
+  molecule: Perceived | null,
+  kind: Couple['kind'],
+  { contents, tables }: Build,
+): Couple | undefined {
+  const alive = (molecule?.couples ?? []).filter(
+    (couple) =>
+      couple.kind === kind && (kind === 'base' || rateOf(couple, 'leaves', contents, tables) !== 'dead'),
+  );
+  return alive.find(({ element }) => element !== 'C') ?? alive[0];
 }
 
 function ingredientAcids(one: Ingredient, build: Build): { acids: FlaskAcid[]; charges: number } {

@@ -3,7 +3,7 @@
  *
  * Knows: constants and how they were derived.  Must not know: flasks, text.
  * Units: pKa.
- * Invariant: a wider sd of either constant never narrows the difference.   (tests/flask/uncertainty.test.ts)
+ * Invariant: a wider sd of either constant never narrows the difference.   (tests/flask/fates.test.ts)
  * The two shares below are derived: a correlation line shifts all values it carries together, by about half of its
  * residual variance, and a borrowed scale errs alike on two couples of one class.
  */

@@ -4,7 +4,7 @@
  * Knows: rows of solvents.  Must not know: flasks, text.
  * Units: pH on the solvent's own scale; absolute pH counted from the standard proton in water (pH_abs − pH_abs(H+, water, 1 M)).
  * Source: D. Himmel, S. K. Goll, I. Leito, I. Krossing, Angew. Chem. Int. Ed. 2010, 49, 6885.
- * Invariant: the absolute window is as wide as the own one.   (tests/flask/window.test.ts)
+ * Invariant: the absolute window is as wide as the own one.   (tests/flask/shares.test.ts)
  */
 import type { SolventRow } from '../tables/rows.ts';
 
