@@ -258,3 +258,57 @@ export interface HeatRow extends Sourced {
   readonly sd: number;
   readonly note: string;
 }
+
+/** One kind of ionizable group: where it sits and what its parent is worth on the measured scales. */
+export interface GroupRow extends Sourced {
+  readonly id: string;
+  readonly name: string;
+  readonly kind: 'acid' | 'base';
+  readonly family: string;
+  readonly smarts: string;
+  /** Parsed at build. */
+  readonly pattern: unknown;
+  /** The highest one that fits an atom wins it. */
+  readonly priority: number;
+  readonly example: string;
+  readonly water: number | null;
+  readonly waterSd: number | null;
+  readonly dmso: number | null;
+  readonly dmsoSd: number | null;
+  readonly mecn: number | null;
+  readonly mecnSd: number | null;
+  readonly model: string;
+  readonly note: string;
+}
+
+/** A measured constant at a marked site. */
+export interface MeasuredRow extends Sourced {
+  readonly name: string;
+  readonly smiles: string;
+  /** Key of the neutral molecule and symmetry classes of the marked atoms, made at build. */
+  readonly key: string;
+  readonly classes: readonly number[];
+  readonly direction: 'acid' | 'base';
+  readonly scale: ScaleId;
+  /** Protons lost by the fully protonated form, from 1; null where the site has one constant. */
+  readonly step: number | null;
+  readonly value: number;
+  readonly sd: number;
+  readonly temperature: number | null;
+  readonly checkedAgainst: string;
+  readonly note: string;
+}
+
+/** How constants of one family go from one scale to another: value = intercept + slope × value. */
+export interface ScaleRow extends Sourced {
+  readonly from: ScaleId;
+  readonly to: ScaleId;
+  readonly family: string;
+  readonly slope: number;
+  readonly intercept: number;
+  readonly sd: number;
+  readonly n: number | null;
+  readonly low: number | null;
+  readonly high: number | null;
+  readonly note: string;
+}

@@ -1,0 +1,91 @@
+/**
+ * All tables as the program holds them, with the indexes that look-ups need.
+ *
+ * Knows: rows.  Must not know: what they mean, where they are stored.
+ * Invariant: reading works out no key and parses no pattern; the build has done both.
+ */
+import { foldName } from './names.ts';
+import type {
+  CautionRow, EnthalpyRow, GasRow, GroupRow, HeatRow, HydrideRow, KineticsRow, LimitRow, MeasuredRow, ReagentRow, ScaleRow, SolventRow, SourceRow,
+  SpreadRow, StabilityRow, SubstituentRow, TermRow,
+} from './rows.ts';
+
+interface Built {
+  readonly version: string;
+  readonly groups: readonly GroupRow[];
+  readonly substituents: readonly SubstituentRow[];
+  readonly terms: readonly TermRow[];
+  readonly spreads: readonly SpreadRow[];
+  readonly measured: readonly MeasuredRow[];
+  readonly scales: readonly ScaleRow[];
+  readonly solvents: readonly SolventRow[];
+  readonly reagents: readonly ReagentRow[];
+  readonly cautions: readonly CautionRow[];
+  readonly limits: readonly LimitRow[];
+  readonly stability: readonly StabilityRow[];
+  readonly kinetics: readonly KineticsRow[];
+  readonly heats: readonly HeatRow[];
+  readonly enthalpies: readonly EnthalpyRow[];
+  readonly gases: readonly GasRow[];
+  readonly hydrides: readonly HydrideRow[];
+  readonly sources: readonly SourceRow[];
+}
+
+export interface Tables extends Built {
+  readonly reagentByName: ReadonlyMap<string, ReagentRow>;
+  readonly solventByName: ReadonlyMap<string, SolventRow>;
+  readonly reagentByKey: ReadonlyMap<string, ReagentRow>;
+  readonly solventByKey: ReadonlyMap<string, SolventRow>;
+  /** One way of writing each folded name. */
+  readonly nameByFolded: ReadonlyMap<string, string>;
+  /** Words of the longest name. */
+  readonly longestName: number;
+  readonly measuredByKey: ReadonlyMap<string, readonly MeasuredRow[]>;
+  readonly groupById: ReadonlyMap<string, GroupRow>;
+  readonly sourceById: ReadonlyMap<string, SourceRow>;
+}
+
+/** Indexes the generated tables. */
+export function readTables(json: unknown): Tables {
+  const built = json as Built;
+  const nameByFolded = new Map<string, string>();
+  let longestName = 1;
+  const byName = <Row extends { name: string; synonyms: readonly string[] }>(rows: readonly Row[]) => {
+    const index = new Map<string, Row>();
+    for (const row of rows) {
+      for (const name of [row.name, ...row.synonyms]) {
+        const folded = foldName(name);
+        if (!index.has(folded)) index.set(folded, row);
+        if (!nameByFolded.has(folded)) nameByFolded.set(folded, name);
+        longestName = Math.max(longestName, name.split(/\s+/).length);
+      }
+    }
+    return index;
+  };
+  const byKey = <Row extends { key: string | null }>(rows: readonly Row[]) => {
+    const index = new Map<string, Row>();
+    for (const row of rows) if (row.key !== null && !index.has(row.key)) index.set(row.key, row);
+    return index;
+  };
+  const measuredByKey = new Map<string, MeasuredRow[]>();
+  for (const row of built.measured) {
+    const list = measuredByKey.get(row.key);
+    if (list === undefined) measuredByKey.set(row.key, [row]);
+    else list.push(row);
+  }
+  const reagentByName = byName(built.reagents);
+  const solventByName = byName(built.solvents);
+  return {
+    ...built,
+    reagentByName,
+    solventByName,
+    reagentByKey: byKey(built.reagents),
+    solventByKey: byKey(built.solvents),
+    nameByFolded,
+    longestName,
+    measuredByKey,
+    groupById: new Map(built.groups.map((row) => [row.id, row])),
+    sourceById: new Map(built.sources.map((row) => [row.id, row])),
+  };
+}
+
