@@ -50,6 +50,17 @@ test('LDA takes the proton of acetonitrile used as solvent', () => {
   expect(solventFate(contents, tables, constantsIn).loses[0]!.mol).toBeCloseTo(0.2, 3);
 });
 
+test('a solvent without a constant of its own answers for its structure, unless its protons are dead', () => {
+  const inSolvent = (group: string, dmso: number) => {
+    const contents = flask([[THF, 1]], [lda]);
+    const own = molecule([{ group, family: 'carbon-acid', element: 'C', dmso }], [0], 72);
+    const [poured, ...others] = contents.ingredients;
+    return fates({ ...contents, ingredients: [{ ...poured!, molecule: own }, ...others] });
+  };
+  expect(inSolvent('ketone-ch', 26.5)[0]).toMatchObject({ as: 'base', bySolvent: true });
+  expect(inSolvent('ether-ch', 30)).toEqual([]);
+});
+
 test('LDA in THF and butyllithium in toluene keep', () => {
   expect(fates(flask([[THF, 1]], [lda]))).toEqual([]);
   expect(fates(flask([[TOLUENE, 1]], [butyl], 233.15))).toEqual([]);

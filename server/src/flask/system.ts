@@ -8,6 +8,7 @@
  * Invariants: ids of ingredients are kept; an ingredient without usable amount or structure gives nothing.   (tests/flask/judge.test.ts)
  */
 import type { Component, Constant, Couple, Perceived, ProtonStep } from '../chemistry/couple.ts';
+import type { SolventRow } from '../tables/rows.ts';
 import type { Tables } from '../tables/tables.ts';
 import { PKA_OF_HYDRONIUM, pKaOfWater } from './balance.ts';
 import { coupledSteps } from './carbon-sites.ts';
@@ -60,16 +61,6 @@ export interface Participation {
 const SPARED_FROM = 20;
 /** A carbon acid that does give its proton to an organometallic before anything else. */
 const EATING_FAMILIES = new Set(['alkyne', 'hydrogen-cyanide']);
-/** Kinds of solvent whose own C–H protons no base of the trade takes in the time of a step. */
-const DEAD_SOLVENTS = new Set([
-  'ether',
-  'aromatic',
-  'alkane',
-  'halogenated',
-  'amine',
-  'phosphoramide',
-  'urea',
-]);
 const HOT_WATER = 100;
 const ZERO_CELSIUS = 273.15;
 
@@ -141,14 +132,9 @@ function solventAmount({ solvent, volume, mol, molecule }: Ingredient, medium: M
 
 /** The lyonium and lyate couples of the solvent that governs. */
 function solventAcids(one: Ingredient, amount: number, build: Build): FlaskAcid[] {
-  const { medium, pKw } = build;
-  const row = medium.solvent!;
-  const steps: ProtonStep[] = [];
-  const lyonium = isWater(row) ? PKA_OF_HYDRONIUM : ownScale(row.lyoniumPKa, build);
-  if (lyonium !== null) steps.push(solventStep(one, 'base', lyonium, build));
-  const lyate = pKw !== null ? pKaOfWater(pKw) : ownScale(row.lyatePKa, build);
-  const isDead = DEAD_SOLVENTS.has(row.kind);
-  if (lyate !== null && !isDead) steps.push(solventStep(one, 'acid', lyate, build));
+  const lyonium = solventStep(one, 'base', build);
+  const lyate = solventStep(one, 'acid', build);
+  const steps = [lyonium, lyate].filter((step) => step !== null);
   if (steps.length === 0) return [];
   return [
     {
@@ -157,7 +143,7 @@ function solventAcids(one: Ingredient, amount: number, build: Build): FlaskAcid[
       steps,
       shifts: steps.map(() => 0),
       amount,
-      protonsCharged: steps.filter(({ couple }) => couple.kind === 'acid').length,
+      protonsCharged: lyate === null ? 0 : 1,
       fullCharge: lyonium === null ? 0 : 1,
       gas: null,
       isSolvent: true,
@@ -166,21 +152,16 @@ function solventAcids(one: Ingredient, amount: number, build: Build): FlaskAcid[
   ];
 }
 
-/** A solvent's own constant counts only on the scale it was written for. */
-function ownScale(value: number | null, { medium }: Build): number | null {
-  return medium.solvent!.scale === medium.scale ? value : null;
-}
-
-function solventStep(
-  { molecule }: Ingredient,
-  kind: Couple['kind'],
-  value: number,
-  build: Build,
-): ProtonStep {
-  const { medium } = build;
+/** A couple of the solvent with its own constant, or with that of its structure where the row has none; null without either. */
+function solventStep(one: Ingredient, kind: Couple['kind'], build: Build): ProtonStep | null {
+  const { medium, pKw } = build;
   const row = medium.solvent!;
-  const known = ownCouple(molecule, kind, build);
-  const couple: Couple = known ?? {
+  const alive = aliveCouples(one.molecule, kind, build);
+  // Its protons are known, and none of them moves.
+  if (alive.length === 0 && (one.molecule?.couples.length ?? 0) !== 0) return null;
+  const value = ownValue(row, kind, medium, pKw);
+  if (value === null) return structureStep(one, alive, build);
+  const couple: Couple = alive[0] ?? {
     atom: 0,
     element: '',
     group: kind === 'base' ? 'lyonium' : 'lyate',
@@ -193,28 +174,51 @@ function solventStep(
   };
   const sd = row.ownCoupleSd ?? 0;
   const what = kind === 'base' ? `protonated ${row.name}` : `${row.name} as an acid`;
-  const constant: Constant = {
-    value,
-    sd,
-    scale: medium.scale,
-    origin: 'measured',
-    sources: row.sources,
-    hops: [{ what, value, sd, sources: row.sources }],
+  const hops = [{ what, value, sd, sources: row.sources }];
+  return {
+    couple,
+    constant: { value, sd, scale: medium.scale, origin: 'measured', sources: row.sources, hops },
   };
-  return { couple, constant };
 }
 
-/** Which of a solvent's couples is meant by its own constant: on a heteroatom first, never a dead one. */
-function ownCouple(
+/** A solvent's own constant counts only on the scale it was written for; water's follows the temperature. */
+function ownValue(row: SolventRow, kind: Couple['kind'], medium: Medium, pKw: number | null): number | null {
+  if (pKw !== null && isWater(row)) return kind === 'base' ? PKA_OF_HYDRONIUM : pKaOfWater(pKw);
+  if (row.scale !== medium.scale) return null;
+  return kind === 'base' ? row.lyoniumPKa : row.lyatePKa;
+}
+
+/** The easiest of the solvent's couples by the constants of its structure. */
+function structureStep(
+  { molecule }: Ingredient,
+  alive: readonly Couple[],
+  { constantsIn, medium, tables }: Build,
+): ProtonStep | null {
+  if (molecule === null) return null;
+  const { couples } = constantsIn(molecule, medium.scale, tables);
+  let best: ProtonStep | null = null;
+  for (const couple of alive) {
+    const constant = couples[molecule.couples.indexOf(couple)];
+    if (constant == null) continue;
+    const isEasier =
+      best === null ||
+      (couple.kind === 'acid' ? constant.value < best.constant.value : best.constant.value < constant.value);
+    if (isEasier) best = { couple, constant };
+  }
+  return best;
+}
+
+/** The couples of a solvent that move, those on heteroatoms first. */
+function aliveCouples(
   molecule: Perceived | null,
   kind: Couple['kind'],
   { contents, tables }: Build,
-): Couple | undefined {
-  const alive = (molecule?.couples ?? []).filter(
-    (couple) =>
-      couple.kind === kind && (kind === 'base' || rateOf(couple, 'leaves', contents, tables) !== 'dead'),
-  );
-  return alive.find(({ element }) => element !== 'C') ?? alive[0];
+): Couple[] {
+  const isAlive = (couple: Couple) =>
+    kind === 'base' || rateOf(couple, 'leaves', contents, tables) === 'instant';
+  return (molecule?.couples ?? [])
+    .filter((couple) => couple.kind === kind && isAlive(couple))
+    .sort((a, b) => Number(a.element === 'C') - Number(b.element === 'C'));
 }
 
 function ingredientAcids(one: Ingredient, build: Build): { acids: FlaskAcid[]; charges: number } {
