@@ -5,6 +5,7 @@
  * Units: mol; shares 0 … 1.
  * Invariants: shares lost add up to no more than one; a reagent never eats itself.   (tests/flask/fates.test.ts)
  */
+import { constantsIn as constantsOf } from '../chemistry/constants.ts';
 import type { Couple } from '../chemistry/couple.ts';
 import type { Tables } from '../tables/tables.ts';
 import { rateOf } from './kinetics.ts';
@@ -72,7 +73,7 @@ const LEAST_LOST = 5e-3;
 export function reagentFates(
   contents: Contents,
   tables: Tables,
-  constantsIn: ConstantsIn,
+  constantsIn: ConstantsIn = constantsOf,
   participation: Participation = {},
 ): ReagentFate[] {
   const solved = solveContents(contents, tables, constantsIn, participation);
@@ -118,7 +119,7 @@ export function fatesOf(solved: Solved): ReagentFate[] {
 export function solventFate(
   contents: Contents,
   tables: Tables,
-  constantsIn: ConstantsIn,
+  constantsIn: ConstantsIn = constantsOf,
   participation: Participation = {},
 ): SolventFate {
   const solved = solveContents(contents, tables, constantsIn, participation);
@@ -150,7 +151,7 @@ export function siteOrder(
   verdict: Verdict,
   direction: 'deprotonate' | 'protonate',
   tables: Tables,
-  constantsIn: ConstantsIn,
+  constantsIn: ConstantsIn = constantsOf,
 ): OtherSite[] {
   const loses = direction === 'deprotonate';
   const { site } = verdict;

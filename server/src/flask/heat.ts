@@ -6,6 +6,7 @@
  * Accuracy: enthalpies in water stand for all solvents; a figure for planning, never a safety assessment.
  * Invariant: nothing added, nothing heated; twice the flask, the same rise.   (tests/flask/shares.test.ts)
  */
+import { constantsIn as constantsOf } from '../chemistry/constants.ts';
 import type { HeatRow } from '../tables/rows.ts';
 import type { Tables } from '../tables/tables.ts';
 import { isCalled } from './kinetics.ts';
@@ -43,7 +44,7 @@ export function heatOfAddition(
   before: Contents,
   added: readonly Ingredient[],
   tables: Tables,
-  constantsIn: ConstantsIn,
+  constantsIn: ConstantsIn = constantsOf,
 ): HeatBalance {
   const after: Contents = { ...before, ingredients: [...before.ingredients, ...added] };
   const [old, now] = [before, after].map((contents) => solveContents(contents, tables, constantsIn));

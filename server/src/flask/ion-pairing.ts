@@ -5,7 +5,7 @@
  * Units: pKa.
  * Invariant: without an amine as the strongest base nothing is moved.   (tests/flask/uptake.test.ts)
  */
-import type { Constant } from '../chemistry/couple.ts';
+import type { Constant, Couple } from '../chemistry/couple.ts';
 import type { Tables } from '../tables/tables.ts';
 import { formsIonPair } from './allowances/ion-pair.ts';
 import type { ConstantsIn, Contents, Medium, Site } from './state.ts';
@@ -68,8 +68,13 @@ export function constantInWater(
   constantsIn: ConstantsIn,
 ): Constant | null {
   const one = ingredients.find(({ id }) => id === ingredient);
-  const place = one?.molecule?.couples.indexOf(couple) ?? -1;
+  // A remembered answer may point at couples of an earlier perception of the same text.
+  const place = one?.molecule?.couples.findIndex((own) => isOne(own, couple)) ?? -1;
   if (one?.molecule == null || place === -1) return null;
   const { couples } = constantsIn(one.molecule, WATER, tables, one.own ? { own: one.own } : {});
   return couples[place] ?? null;
+}
+
+function isOne(a: Couple, b: Couple): boolean {
+  return a.kind === b.kind && a.atom === b.atom && a.holdsProton === b.holdsProton;
 }

@@ -9,6 +9,7 @@
  *  2. Scaling all amounts and volumes leaves the verdict.                   (same)
  *  3. A wider sd of a constant never makes a verdict surer.                 (same)
  */
+import { constantsIn as constantsOf } from '../chemistry/constants.ts';
 import type { Constant, Couple, Perceived, ProtonStep } from '../chemistry/couple.ts';
 import type { Tables } from '../tables/tables.ts';
 import { endSite, STEADY_FROM } from './allowances/intent.ts';
@@ -61,7 +62,7 @@ export function judgeTransfer(
   contents: Contents,
   intent: Intent,
   tables: Tables,
-  constantsIn: ConstantsIn,
+  constantsIn: ConstantsIn = constantsOf,
   thresholds: VerdictThresholds = THRESHOLDS,
 ): Verdict | null {
   const one = contents.ingredients.find(({ id }) => id === intent.ingredient);
@@ -117,14 +118,17 @@ function heldCouples(
     const list = [...(steps[place] ?? [])].sort((a, b) => a.constant.value - b.constant.value);
     return { steps: list, held: list.filter(({ couple }) => couple.holdsProton).length };
   });
-  const gained = new Set<Couple>();
-  const lost = new Set<Couple>();
+  // By value: a remembered answer may hold the couples of an earlier perception.
+  const name = ({ kind, atom, holdsProton }: Couple) => `${kind} ${atom} ${holdsProton}`;
+  const gained = new Set<string>();
+  const lost = new Set<string>();
   for (const [place, now] of heldInSalt(drawn).entries()) {
     const { steps: list, held } = drawn[place]!;
-    for (let protons = held; protons < now; protons++) gained.add(list[list.length - 1 - protons]!.couple);
-    for (let protons = held; now < protons; protons--) lost.add(list[list.length - protons]!.couple);
+    for (let protons = held; protons < now; protons++)
+      gained.add(name(list[list.length - 1 - protons]!.couple));
+    for (let protons = held; now < protons; protons--) lost.add(name(list[list.length - protons]!.couple));
   }
-  return (couple) => gained.has(couple) || (couple.holdsProton && !lost.has(couple));
+  return (couple) => gained.has(name(couple)) || (couple.holdsProton && !lost.has(name(couple)));
 }
 
 function weigh(

@@ -6,6 +6,7 @@
  * Accuracy: an estimate; calculated log P errs by about half a unit and stands for any organic solvent.
  * Invariants: shares lie between 0 and 1; more organic solvent or more portions never leave more in water.   (tests/flask/shares.test.ts)
  */
+import { constantsIn as constantsOf } from '../chemistry/constants.ts';
 import type { OwnValue, Perceived } from '../chemistry/couple.ts';
 import type { Tables } from '../tables/tables.ts';
 import { ION_PAIR_DROP, neutralLogP } from './distribution.ts';
@@ -28,7 +29,7 @@ export function layerForms(
   molecule: Perceived,
   pH: number,
   tables: Tables,
-  constantsIn: ConstantsIn,
+  constantsIn: ConstantsIn = constantsOf,
   own: readonly OwnValue[] = [],
 ): LayerForms {
   const main = mainComponent(molecule);

@@ -8,6 +8,7 @@
  *  2. The same contents give the same bits; nothing is remembered.             (same)
  *  3. Ionic strength is iterated to a fixed point in a set number of turns.    (same)
  */
+import { constantsIn as constantsOf } from '../chemistry/constants.ts';
 import type { Tables } from '../tables/tables.ts';
 import { activityVariance, mixedConstants } from './activity.ts';
 import { formShares, HIGHEST_PH, LOWEST_PH, type Polyprotic, solveBalance, stepShares } from './balance.ts';
@@ -43,7 +44,11 @@ export interface Solved {
 }
 
 /** The state of a flask once the protons have come to rest. */
-export function solveFlask(contents: Contents, tables: Tables, constantsIn: ConstantsIn): FlaskState {
+export function solveFlask(
+  contents: Contents,
+  tables: Tables,
+  constantsIn: ConstantsIn = constantsOf,
+): FlaskState {
   return stateOf(solveContents(contents, tables, constantsIn));
 }
 

@@ -4,6 +4,7 @@
  * Knows: stepwise constants.  Must not know: flasks, text.
  * Invariant: the shares of a component add up to one at every pH.   (tests/flask/shares.test.ts)
  */
+import { constantsIn as constantsOf } from '../chemistry/constants.ts';
 import type { OwnValue, Perceived } from '../chemistry/couple.ts';
 import type { ScaleId } from '../tables/rows.ts';
 import type { Tables } from '../tables/tables.ts';
@@ -25,7 +26,7 @@ export function speciate(
   scale: ScaleId,
   pHs: readonly number[],
   tables: Tables,
-  constantsIn: ConstantsIn,
+  constantsIn: ConstantsIn = constantsOf,
   own: readonly OwnValue[] = [],
 ): Form[] {
   const { steps } = constantsIn(molecule, scale, tables, { own });

@@ -7,6 +7,7 @@
  * Units: mol.  The volume that the reagent brings is not added.
  * Invariant: adding the amount and solving gives the pH asked for within 0.01.   (tests/flask/titrate.test.ts)
  */
+import { constantsIn as constantsOf } from '../chemistry/constants.ts';
 import type { Tables } from '../tables/tables.ts';
 import { mixedConstants } from './activity.ts';
 import { formShares, gasLeft, type Polyprotic, protonExcess } from './balance.ts';
@@ -42,7 +43,7 @@ export function titrateTo(
   pH: number,
   reagent: Ingredient,
   tables: Tables,
-  constantsIn: ConstantsIn,
+  constantsIn: ConstantsIn = constantsOf,
 ): Titration {
   const medium = mediumOf(contents);
   const nothing = { mol: null, before: null, limit: null, after: null };

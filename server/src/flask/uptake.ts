@@ -5,6 +5,7 @@
  * Units: mol; shares 0 … 1.
  * Invariant: more acid never leaves more of the free amine.   (tests/flask/uptake.test.ts)
  */
+import { constantsIn as constantsOf } from '../chemistry/constants.ts';
 import type { Perceived } from '../chemistry/couple.ts';
 import type { Tables } from '../tables/tables.ts';
 import { solveFlask } from './solve.ts';
@@ -46,7 +47,7 @@ export function acidUptake(
   acid: Perceived,
   mol: number,
   tables: Tables,
-  constantsIn: ConstantsIn,
+  constantsIn: ConstantsIn = constantsOf,
 ): { readonly before: number | null; readonly after: number | null } {
   const released: Ingredient = {
     id: 1 + Math.max(0, ...contents.ingredients.map(({ id }) => id)),
