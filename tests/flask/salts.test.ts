@@ -4,7 +4,7 @@ import { judgeTransfer } from '../../server/src/flask/judge.ts';
 import { heldInSalt } from '../../server/src/flask/salts.ts';
 import { solveFlask } from '../../server/src/flask/solve.ts';
 import { protonatedShare } from '../../server/src/flask/uptake.ts';
-import { type CoupleSpec, constantsIn, DCM, flask, molecule, stock, tables } from './kit.ts';
+import { type CoupleSpec, constantsIn, DCM, flask, molecule, stock, tables, WATER } from './kit.ts';
 
 const amine: CoupleSpec = {
   group: 'amine-primary',
@@ -110,4 +110,30 @@ test('an acid and an amine in dichloromethane meet as a pair in the balance too'
     1 - state.couples.find(({ couple }) => couple.family === 'carboxylic-acid')!.protonated,
     6,
   );
+});
+
+test('dihydrogen phosphate gives its proton at pKa 7 and takes one at pKa 2', () => {
+  const oxygen = (water: number, held: boolean): CoupleSpec => ({
+    group: 'phosphoric-acid',
+    family: 'phosphoric',
+    element: 'O',
+    water,
+    held,
+  });
+  const salt = () => molecule([oxygen(2.15, true), oxygen(7.2, true), oxygen(12.35, false)], [-1, 1]);
+  const judge = (direction: 'deprotonate' | 'protonate', other: ReturnType<typeof stock.NaOH>) =>
+    judgeTransfer(
+      flask(
+        [[WATER, 1]],
+        [
+          { name: 'KH2PO4', molecule: salt(), mol: 0.1 },
+          { name: 'other', molecule: other, mol: 0.1 },
+        ],
+      ),
+      { ingredient: 1, couples: [], direction },
+      tables,
+      constantsIn,
+    )!;
+  expect(judge('deprotonate', stock.NaOH()).site.constant.value).toBe(7.2);
+  expect(judge('protonate', stock.HCl()).site.constant.value).toBe(2.15);
 });

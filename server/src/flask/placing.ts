@@ -61,14 +61,25 @@ export function placeSite(
   };
 }
 
-/** The step of an acid that a couple stands for: among several the one that moves next. */
+/**
+ * The step of an acid that a couple stands for: among several the one that moves next.
+ *
+ * Equal groups of one component share their protons, so dihydrogen phosphate takes a proton at its most acidic step,
+ * whichever oxygen the drawing left bare.
+ */
 function stepOf(acid: FlaskAcid, couple: Couple, direction: Direction): number {
-  const places = acid.steps.flatMap((step, place) => (isSame(step.couple, couple) ? [place] : []));
-  if (places.length === 0) return -1;
+  const own = acid.steps.flatMap((step, place) => (isSame(step.couple, couple) ? [place] : []));
+  if (own.length === 0) return -1;
   const loses = direction === 'deprotonate';
-  const ready = places.filter((place) => HALF < chargedShare(acid, place) === loses);
-  const open = ready.length === 0 ? places : ready;
+  const isReady = (place: number) => HALF < chargedShare(acid, place) === loses;
+  const kin = acid.steps.flatMap((step, place) => (isKin(step.couple, couple) ? [place] : []));
+  const open =
+    [own, kin].map((places) => places.filter(isReady)).find((places) => places.length !== 0) ?? own;
   return loses ? open[0]! : open.at(-1)!;
+}
+
+function isKin(a: Couple, b: Couple): boolean {
+  return a.element !== 'C' && a.group === b.group && a.kind === b.kind && a.component === b.component;
 }
 
 function isSame(a: Couple, b: Couple): boolean {
