@@ -46,7 +46,7 @@ const checks = (diagnostics: readonly Diagnostic[]) => diagnostics.map(({ code }
 
 beforeAll(async () => {
   entry = await bundle('tests/lsp/stand-in-server.ts', '.cache/tests/stand-in-server.cjs');
-  client = await startClient([entry], { folder: pathToFileURL(folder).toString() });
+  client = await startClient([entry, '--stdio'], { folder: pathToFileURL(folder).toString() });
 });
 afterAll(() => client?.stop());
 
@@ -351,7 +351,10 @@ describe('a client that asks by itself', () => {
       textDocument: { ...PUSH.textDocument, diagnostic: {} },
       workspace: { ...PUSH.workspace, diagnostics: { refreshSupport: true }, textDocumentContent: {} },
     };
-    const other = await startClient([entry], { folder: pathToFileURL(folder).toString(), capabilities });
+    const other = await startClient([entry, '--stdio'], {
+      folder: pathToFileURL(folder).toString(),
+      capabilities,
+    });
     const uri = fresh();
     other.open(uri, 'base\n');
     const ask = (previousResultId?: string) =>

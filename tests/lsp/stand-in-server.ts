@@ -67,7 +67,7 @@ function toFinding(
   };
 }
 
-startServer(createConnection(ProposedFeatures.all, process.stdin, process.stdout), {
+startServer(createConnection(ProposedFeatures.all), {
   tables: () => SMALL_TABLES,
   createAnalyser: readOnly,
   files: nodeFiles,

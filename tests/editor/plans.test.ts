@@ -1,0 +1,233 @@
+/** The packed extension in the real workbench: findings where they belong, and everything that is done with them. */
+import { readFileSync } from 'node:fs';
+import { join } from 'node:path';
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { startWorkbench, type Workbench } from './workbench.ts';
+
+const MISTAKE = `plan "Two mistakes"
+
+compound ketone = CC(=O)c1ccccc1
+
+step A "Enolate"
+  solvent THF 20 mL
+  charge ketone 10 mmol
+  base LDDA 1.05 equiv
+  temperature -78 °C
+  deprotonate ketone
+`;
+let workbench: Workbench;
+
+beforeAll(async () => {
+  workbench = await startWorkbench({
+    'mistake.lyate': MISTAKE,
+    'structure.lyate': 'compound broken = CC(=O\nstep A\n  charge broken 1 mmol\n',
+    'shared.lyate': 'compound acid = CC(=O)O\n',
+    'uses.lyate':
+      'use "shared.lyate"\nstep A\n  solvent water 5 mL\n  charge acid 1 mmol\n  isolate acid as neutral\n',
+    'page.md': '# Notes\n\n```lyate\nstep A\n  base NaOOOH 1 mmol\n```\n',
+    'type.lyate': 'compound ketone = CC(=O)C\n\nstep A\n  \n',
+  });
+});
+afterAll(() => workbench?.stop());
+
+/** Text of what a hover shows, waited for. */
+async function hoverText(): Promise<string> {
+  const box = workbench.page.locator('.monaco-hover:not(.hidden) .hover-contents').first();
+  await box.waitFor();
+  return (await workbench.page.locator('.monaco-hover:not(.hidden)').allInnerTexts()).join('\n');
+}
+
+/** Everything the editor shows, as text. */
+async function editorText(): Promise<string> {
+  const lines = await workbench.page.locator('.editor-instance .view-lines .view-line').all();
+  const placed = await Promise.all(
+    lines.map(async (line) => ({ y: (await line.boundingBox())?.y ?? 0, text: await line.innerText() })),
+  );
+  return placed
+    .sort((a, b) => a.y - b.y)
+    .map(({ text }) => text.replaceAll('\u00a0', ' '))
+    .join('\n');
+}
+
+describe('findings', () => {
+  it('underline the exact word, and the hover says why', async () => {
+    await workbench.openFile('mistake.lyate');
+    const squiggle = workbench.squiggles('error').first();
+    await squiggle.waitFor();
+    const box = (await squiggle.boundingBox())!;
+    const word = (await workbench.page.getByText('LDDA', { exact: true }).first().boundingBox())!;
+    expect(Math.abs(box.x - word.x)).toBeLessThan(3);
+    expect(Math.abs(box.width - word.width)).toBeLessThan(6);
+    await workbench.page.mouse.move(box.x + box.width / 2, box.y + 2);
+    const text = await hoverText();
+    expect(text).toContain('unknown-name');
+    expect(text).toContain('LDA');
+    await workbench.screenshot('squiggle-and-hover');
+    await workbench.page.mouse.move(640, 700);
+  });
+
+  it('stand in the list of problems', async () => {
+    await workbench.page.keyboard.press('Control+Shift+M');
+    const row = workbench.page.locator('.markers-panel .monaco-list-row', { hasText: 'LDDA' }).first();
+    await row.waitFor();
+    expect(await row.innerText()).toContain('unknown-name');
+    await workbench.page.keyboard.press('Control+Shift+M');
+  });
+
+  it('go by a quick fix from the keyboard', async () => {
+    await workbench.goTo(8, 8);
+    await workbench.page.keyboard.press('Control+.');
+    const action = workbench.page
+      .locator('.action-widget .monaco-list-row.action', { hasText: 'Write LDA' })
+      .first();
+    await action.waitFor();
+    await workbench.screenshot('quick-fix');
+    await action.click();
+    await expect.poll(editorText, { timeout: 10_000 }).toContain('base LDA 1.05 equiv');
+    await expect.poll(() => workbench.squiggles('error').count(), { timeout: 10_000 }).toBe(0);
+  });
+
+  it('come back and go again as the text is edited', async () => {
+    await workbench.goTo(8, 11);
+    await workbench.page.keyboard.type('x');
+    await workbench.squiggles('error').first().waitFor();
+    await workbench.page.keyboard.press('Backspace');
+    await expect.poll(() => workbench.squiggles('error').count(), { timeout: 10_000 }).toBe(0);
+  });
+
+  it('stay right through a storm of undo and redo', async () => {
+    await workbench.goTo(8, 11);
+    await workbench.page.keyboard.type('abcdefgh', { delay: 15 });
+    for (let round = 0; round < 12; round++) await workbench.page.keyboard.press('Control+Z');
+    for (let round = 0; round < 12; round++) await workbench.page.keyboard.press('Control+Y');
+    await workbench.squiggles('error').first().waitFor();
+    for (let round = 0; round < 8; round++) await workbench.page.keyboard.press('Backspace');
+    await expect.poll(editorText, { timeout: 10_000 }).toContain('base LDA 1.05 equiv');
+    await expect.poll(() => workbench.squiggles('error').count(), { timeout: 10_000 }).toBe(0);
+  });
+
+  it('stand in the fences of a page', async () => {
+    await workbench.openFile('page.md');
+    await workbench.squiggles('error').first().waitFor();
+  });
+});
+
+describe('answers', () => {
+  it('a structure that cannot be read is mended', async () => {
+    await workbench.openFile('structure.lyate');
+    await workbench.squiggles('error').first().waitFor();
+    await workbench.goTo(1, 22);
+    await workbench.page.keyboard.press('Control+.');
+    const action = workbench.page
+      .locator('.action-widget .monaco-list-row.action', { hasText: 'CC(=O)' })
+      .first();
+    await action.waitFor();
+    await action.click();
+    await expect.poll(editorText, { timeout: 10_000 }).toContain('CC(=O)');
+    await expect.poll(() => workbench.squiggles('error').count(), { timeout: 10_000 }).toBe(0);
+  });
+
+  it('a compound shows its structure', async () => {
+    await workbench.openFile('mistake.lyate');
+    const name = workbench.page
+      .locator('.view-line', { hasText: 'charge ketone' })
+      .getByText('ketone')
+      .first();
+    await name.hover();
+    await hoverText();
+    await workbench.page.locator('.monaco-hover:not(.hidden) img[src^="data:image/svg"]').first().waitFor();
+    await workbench.screenshot('hover-structure');
+    await workbench.page.mouse.move(640, 700);
+  });
+
+  it('completion offers what fits the place', async () => {
+    await workbench.openFile('type.lyate');
+    await workbench.goTo(4, 3);
+    await workbench.page.keyboard.type('deprotonate ket');
+    const row = workbench.page.locator('.suggest-widget .monaco-list-row', { hasText: 'ketone' }).first();
+    await row.waitFor();
+    await workbench.page.keyboard.press('Tab');
+    await expect.poll(editorText).toContain('deprotonate ketone');
+  });
+
+  it('a compound is renamed in every file that names it', async () => {
+    await workbench.openFile('uses.lyate');
+    await workbench.goTo(4, 11);
+    await workbench.page.keyboard.press('F2');
+    const box = workbench.page.locator('.rename-box input');
+    await box.waitFor();
+    await box.fill('vinegar');
+    await workbench.page.keyboard.press('Enter');
+    await expect.poll(editorText, { timeout: 15_000 }).toContain('isolate vinegar as neutral');
+    await workbench.openFile('shared.lyate');
+    await expect.poll(editorText, { timeout: 15_000 }).toContain('compound vinegar');
+  });
+
+  it('F12 goes to the definition in another file', async () => {
+    await workbench.openFile('uses.lyate');
+    await workbench.goTo(4, 12);
+    await workbench.page.keyboard.press('F12');
+    await workbench.page.locator('.tab.active[data-resource-name="shared.lyate"]').waitFor();
+  });
+
+  it('all plans are checked on command, also those that are not open', async () => {
+    await workbench.command('Lyate: Check All Plans in the Workspace');
+    await workbench.page
+      .locator('.notification-toast', { hasText: /checked \d+ plans/ })
+      .first()
+      .waitFor();
+  });
+});
+
+describe('the server', () => {
+  it('is started anew when it dies, and the findings come back', async () => {
+    await workbench.openFile('page.md');
+    await workbench.squiggles('error').first().waitFor();
+    const killed = childrenOf(workbench.server.pid!).filter((pid) =>
+      commandOf(pid).includes('dist/server.cjs'),
+    );
+    expect(killed.length).toBe(1);
+    process.kill(killed[0]!, 'SIGKILL');
+    await expect
+      .poll(
+        () =>
+          childrenOf(workbench.server.pid!).filter(
+            (pid) => pid !== killed[0] && commandOf(pid).includes('dist/server.cjs'),
+          ).length,
+        { timeout: 30_000 },
+      )
+      .toBe(1);
+    await workbench.squiggles('error').first().waitFor();
+    await workbench.goTo(5, 14);
+    await workbench.page.keyboard.type('x');
+    await workbench.squiggles('error').first().waitFor();
+  });
+
+  it('comes back with a reload of the window', async () => {
+    await workbench.reload();
+    await workbench.openFile('structure.lyate');
+    await workbench.openFile('page.md');
+    await workbench.squiggles('error').first().waitFor({ timeout: 30_000 });
+  });
+});
+
+/** All processes below one, by the system's own table. */
+function childrenOf(pid: number): number[] {
+  try {
+    const own = readFileSync(join('/proc', String(pid), 'task', String(pid), 'children'), 'utf8')
+      .split(' ')
+      .filter((text) => text !== '')
+      .map(Number);
+    return own.flatMap((child) => [child, ...childrenOf(child)]);
+  } catch {
+    return [];
+  }
+}
+
+function commandOf(pid: number): string {
+  try {
+    return readFileSync(join('/proc', String(pid), 'cmdline'), 'utf8');
+  } catch {
+    return '';
+  }
+}

@@ -1,0 +1,14 @@
+import { defineConfig } from 'vitest/config';
+
+export default defineConfig({
+  test: {
+    root: new URL('../..', import.meta.url).pathname,
+    include: ['tests/editor/**/*.test.ts'],
+    globalSetup: ['tests/editor/setup.ts'],
+    fileParallelism: false,
+    testTimeout: 90_000,
+    hookTimeout: 180_000,
+    reporters: ['default', 'json'],
+    outputFile: { json: '.cache/editor-tests.json' },
+  },
+});
