@@ -4,7 +4,7 @@
  * Run by `server/tools/build.mjs`; the only argument is the project's root.
  */
 import { createHash } from 'node:crypto';
-import { mkdirSync, readFileSync, writeFileSync } from 'node:fs';
+import { existsSync, mkdirSync, readFileSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { buildGraph } from '../src/chemistry/build-graph.ts';
 import { neutralForm } from '../src/chemistry/neutral.ts';
@@ -36,6 +36,7 @@ function write(root: string): void {
   const keys = new Set(sources.map(({ id }) => id));
   const tables: Record<string, unknown> = { sources };
   for (const name of TABLES) {
+    if (!existsSync(at(`${name}.csv`))) { tables[name] = []; continue; }
     tables[name] = readTable(at(`${name}.csv`), at('schema', `${name}.json`), keys).map((row) => complete(name, row));
   }
   refuseSharedNames(tables as { solvents: Named[]; reagents: Named[] });

@@ -7,7 +7,15 @@
  */
 import type { Conversion } from '../flask/convert.ts';
 import type { Contents, FlaskState, Ingredient, Verdict } from '../flask/state.ts';
-import type { ConvertStatement, Range, Statement, Step, Substance, TransferStatement } from '../route/plan.ts';
+import type {
+  ConvertStatement,
+  Range,
+  Statement,
+  Step,
+  Substance,
+  TextProblem,
+  TransferStatement,
+} from '../route/plan.ts';
 import type { Tables } from '../tables/tables.ts';
 import type { Settings } from './settings.ts';
 
@@ -36,6 +44,8 @@ export interface TransferFact {
   readonly verdicts: readonly Verdict[];
   /** The conversion after it that uses up the anion, if any. */
   readonly convert: ConvertStatement | null;
+  /** What the line names; null where it is not in the flask. */
+  readonly ingredient: Ingredient | null;
 }
 
 export interface ConvertFact {
@@ -47,6 +57,8 @@ export interface ConvertFact {
 
 export interface StepFacts {
   readonly step: Step;
+  /** What the reader found wrong in the step's own lines. */
+  readonly problems: readonly TextProblem[];
   readonly additions: readonly Addition[];
   readonly moments: readonly Moment[];
   readonly transfers: readonly TransferFact[];

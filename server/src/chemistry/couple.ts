@@ -23,6 +23,8 @@ export interface Couple {
   /** Symmetry-equivalent atoms of the same couple (this one included); protons leave them one after the other only where `steps` says so. */
   readonly equivalents: readonly number[];
   readonly component: number;
+  /** Class of its atoms under the symmetry of the molecule; finds measured values. */
+  readonly symmetry?: number;
 }
 
 /** Where a constant comes from, most trusted first. */
@@ -60,6 +62,8 @@ export interface Component {
   readonly bareCharge: number;
   /** A part without couples: Na+, PF6-, a hydrocarbon outside the range. */
   readonly spectator: boolean;
+  /** Canonical key of its neutral form. */
+  readonly key?: string;
 }
 
 export interface Perceived {

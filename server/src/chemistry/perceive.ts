@@ -14,8 +14,8 @@ import type { Component, Couple, Perceived } from './couple.ts';
 import type { Graph } from './graph.ts';
 import { matchSites } from './match.ts';
 import { type NeutralForm, neutralForm } from './neutral.ts';
-import { readSmiles } from './smiles.ts';
 import type { Pattern } from './smarts.ts';
+import { readSmiles } from './smiles.ts';
 import { canonicalKey, molarMass, symmetryClasses } from './toolkit.ts';
 
 export interface PerceptionTables {
@@ -40,12 +40,23 @@ export function perceive(smiles: string, tables: PerceptionTables): Perceived {
 }
 
 function perceiveAnew(smiles: string, { groups }: PerceptionTables): Perceived {
-  const nothing = { smiles, key: null, graph: null, components: [], couples: [], uncovered: [], molarMass: null };
+  const nothing = {
+    smiles,
+    key: null,
+    graph: null,
+    components: [],
+    couples: [],
+    uncovered: [],
+    molarMass: null,
+  };
   const { structure, problem } = readSmiles(smiles);
   if (structure === undefined) return { ...nothing, problem: { check: 'unreadable-structure', ...problem } };
   if (MOST_ATOMS < structure.atoms.length) {
     const message = `A molecule of ${structure.atoms.length} atoms is not searched for acidic and basic sites; ${MOST_ATOMS} are the most.`;
-    return { ...nothing, problem: { check: 'budget-reached', message, span: { start: 0, end: smiles.length } } };
+    return {
+      ...nothing,
+      problem: { check: 'budget-reached', message, span: { start: 0, end: smiles.length } },
+    };
   }
   const built = buildGraph(structure);
   if (built.graph === undefined) return { ...nothing, problem: built.problem };
@@ -54,20 +65,33 @@ function perceiveAnew(smiles: string, { groups }: PerceptionTables): Perceived {
 
 function describe(smiles: string, graph: Graph, groups: readonly GroupRow[]): Perceived {
   const neutral = neutralForm(graph);
-  const fragments = neutral.graph.fragments.filter((atoms) => !atoms.every((atom) => neutral.absorbed.has(atom)));
+  const fragments = neutral.graph.fragments.filter(
+    (atoms) => !atoms.every((atom) => neutral.absorbed.has(atom)),
+  );
   const rules = bestRules(neutral.graph, groups);
   const couples: Couple[] = [];
   const components: Component[] = [];
+  const keys = fragments.map((atoms) => canonicalKey(neutral.graph, atoms) ?? '?');
   fragments.forEach((atoms, index) => {
     const own = couplesOf(atoms, index, neutral, rules);
     couples.push(...own);
     const charge = atoms.reduce((sum, atom) => sum + graph.atoms[atom]!.charge, 0);
-    const held = own.reduce((sum, { holdsProton, equivalents }) => sum + (holdsProton ? equivalents.length : 0), 0);
-    components.push({ index, atoms, charge, bareCharge: charge - held, spectator: own.length === 0 });
+    const held = own.reduce(
+      (sum, { holdsProton, equivalents }) => sum + (holdsProton ? equivalents.length : 0),
+      0,
+    );
+    components.push({
+      index,
+      atoms,
+      charge,
+      bareCharge: charge - held,
+      spectator: own.length === 0,
+      key: keys[index]!,
+    });
   });
   return {
     smiles,
-    key: fragments.map((atoms) => canonicalKey(neutral.graph, atoms) ?? '?').sort().join(' '),
+    key: [...keys].sort().join(' '),
     problem: null,
     graph,
     components,
@@ -96,7 +120,12 @@ function bestRules(graph: Graph, groups: readonly GroupRow[]): BestRules {
 }
 
 /** One couple for each class of equivalent atoms that the drawing treats alike. */
-function couplesOf(atoms: readonly number[], component: number, neutral: NeutralForm, rules: BestRules): Couple[] {
+function couplesOf(
+  atoms: readonly number[],
+  component: number,
+  neutral: NeutralForm,
+  rules: BestRules,
+): Couple[] {
   const classes = symmetryClasses(neutral.graph, atoms);
   const grouped = new Map<string, { group: GroupRow; atoms: number[]; holds: boolean }>();
   for (const kind of ['acid', 'base'] as const) {
@@ -121,6 +150,7 @@ function couplesOf(atoms: readonly number[], component: number, neutral: Neutral
     holdsProton: holds,
     equivalents,
     component,
+    symmetry: classes.get(equivalents[0]!) ?? -1,
   }));
 }
 

@@ -6,7 +6,7 @@
  *  1. A path from a plan never leaves the workspace, not even through a symbolic link.   (tests/host/files.test.ts)
  *  2. Only regular files of at most `LARGEST_FILE` bytes are read.                        (same)
  */
-import { readFileSync, realpathSync, statSync } from 'node:fs';
+import { readFileSync, realpathSync, renameSync, rmSync, statSync, writeFileSync } from 'node:fs';
 import { dirname, isAbsolute, join, relative, resolve, sep } from 'node:path';
 
 export const LARGEST_FILE = 128 * 1024 * 1024;
@@ -65,4 +65,16 @@ export function workspaceOf(file: string): string {
 
 function exists(path: string): boolean {
   return statSync(path, { throwIfNoEntry: false }) !== undefined;
+}
+
+/** Writes a file whole or not at all: beside it first, then in its place. */
+export function writeWhole(path: string, text: string): void {
+  const beside = `${path}.${process.pid}.tmp`;
+  try {
+    writeFileSync(beside, text);
+    renameSync(beside, path);
+  } catch (error) {
+    rmSync(beside, { force: true });
+    throw error;
+  }
 }

@@ -1,0 +1,152 @@
+/**
+ * What the checks of direction share: the kind of failure of a transfer, its figures and its words.
+ *
+ * Knows: facts.  Must not know: findings of single checks.
+ * Invariant: each judged transfer has exactly one kind, so one root cause gives one finding.
+ */
+import { constantsIn } from '../chemistry/constants.ts';
+import { firstSites, siteOrder } from '../flask/fates.ts';
+import type { Site, Verdict } from '../flask/state.ts';
+import type { Range } from '../route/plan.ts';
+import type { Report } from './define.ts';
+import type { StepFacts, TransferFact } from './facts.ts';
+import type { Related, Severity } from './finding.ts';
+
+export type Kind = 'fine' | 'uphill' | 'partial' | 'slow' | 'other-site' | 'short' | 'undecided';
+
+export interface Judged {
+  readonly fact: TransferFact;
+  readonly verdict: Verdict;
+  readonly kind: Kind;
+  /** Where the finding points: the site as written, or the name. */
+  readonly range: Range;
+  /** The sites that go before, where `kind` is other-site. */
+  readonly ahead: readonly Site[];
+}
+
+const FAILED = 0.1;
+/** Sites of less than this share of the intended one take no base worth naming. */
+const WORTH_NAMING = 0.05;
+/** A base that covers this share of the sites covers them. */
+const COVERED = 0.95;
+/** Less than this share of an equivalent is meant as a catalyst where a conversion follows. */
+const CATALYTIC = 0.35;
+
+/** Every transfer of the step with the kind of its failure. */
+export function judgedTransfers(facts: StepFacts): Judged[] {
+  return facts.transfers.flatMap((fact) =>
+    fact.verdicts.map((verdict, place) => {
+      const { kind, ahead } = kindOf(facts, fact, verdict);
+      return {
+        fact,
+        verdict,
+        kind,
+        ahead,
+        range: fact.statement.sites[place]?.range ?? fact.statement.substance.range,
+      };
+    }),
+  );
+}
+
+function kindOf(
+  facts: StepFacts,
+  fact: TransferFact,
+  verdict: Verdict,
+): { kind: Kind; ahead: readonly Site[] } {
+  const none: readonly Site[] = [];
+  if (verdict.allowances.includes('already')) return { kind: 'fine', ahead: none };
+  if (verdict.kinetics !== 'instant' && verdict.allowances.includes('slow') && verdict.answer !== 'yes')
+    return { kind: 'slow', ahead: none };
+  const ahead = sitesAhead(facts, fact, verdict);
+  const needed = ahead.reduce((sum, { share }) => sum + share, 0);
+  if (0 < verdict.logK && needed !== 0 && verdict.capacity < needed + COVERED && verdict.extent < COVERED) {
+    return { kind: 'other-site', ahead: ahead.map(({ site }) => site) };
+  }
+  if (0 < verdict.logK && verdict.capacity < COVERED && !isCatalytic(fact, verdict))
+    return { kind: 'short', ahead: none };
+  if (verdict.answer === 'yes') return { kind: 'fine', ahead: none };
+  if (verdict.answer === 'undecided') return { kind: 'undecided', ahead: none };
+  if (needed !== 0 && 0 < verdict.logK) return { kind: 'other-site', ahead: ahead.map(({ site }) => site) };
+  return { kind: verdict.extent < FAILED ? 'uphill' : 'partial', ahead: none };
+}
+
+function isCatalytic({ convert }: TransferFact, { capacity, allowances }: Verdict): boolean {
+  return (convert !== null && capacity < CATALYTIC) || allowances.includes('steady-amount');
+}
+
+/** Sites that surely give (take) their proton first, with their amount for each mol of the intended one. */
+function sitesAhead(facts: StepFacts, fact: TransferFact, verdict: Verdict): { site: Site; share: number }[] {
+  if (verdict.partner === null) return [];
+  const order = siteOrder(fact.contents, verdict, fact.statement.keyword, facts.tables, constantsIn);
+  const amount = fact.ingredient?.mol ?? 0;
+  return firstSites(order, facts.settings.thresholds.warning)
+    .map((other) => ({ site: other.site, share: amount === 0 ? 0 : other.amount / amount }))
+    .filter(({ share }) => WORTH_NAMING <= share);
+}
+
+/** The figures that every finding about a transfer carries. */
+export function figuresOf({ logK, sd, extent }: Verdict): Record<string, number> {
+  return { deltaPKa: logK, sd, logK, extent };
+}
+
+/** Error where failure is sure and complete, warning where it is likely. */
+export function severityOf({ probability, extent }: Verdict, { settings }: StepFacts): Severity {
+  const { error, warning } = settings.thresholds;
+  if (error <= probability && extent < FAILED) return 'error';
+  return warning <= probability ? 'warning' : 'information';
+}
+
+/** Base or acid that acts and the solvent, as related places. */
+export function placesOf(facts: StepFacts, { verdict, fact }: Judged): Related[] {
+  const places: Related[] = [];
+  const add = (id: number | null | undefined, message: string) => {
+    const addition = facts.additions.find(({ ingredient }) => ingredient.id === id);
+    if (addition?.statement != null) places.push({ range: addition.range, message });
+  };
+  const { partner, site } = verdict;
+  if (partner !== null)
+    add(verdict.broughtBy ?? partner.ingredient, `${nameOf(facts, partner)}: pKa ${unit(partner)}`);
+  add(site.ingredient, `${nameOf(facts, site)}: pKa ${unit(site)}`);
+  const solvent = fact.contents.ingredients.find(({ role }) => role === 'solvent');
+  add(solvent?.id, `solvent; acidities on the ${verdict.scale} scale`);
+  return places;
+}
+
+/** "18.3 ± 0.4 in water" */
+export function unit({ constant }: Site): string {
+  return `${constant.value.toFixed(1)} ± ${constant.sd.toFixed(1)} on the ${constant.scale} scale`;
+}
+
+/** "C–H (aryl ketone) of K" */
+export function nameOf({ additions }: StepFacts, { ingredient, couple }: Site): string {
+  const owner =
+    additions.find(({ ingredient: one }) => one.id === ingredient)?.ingredient.name ?? 'the solvent';
+  return couple.kind === 'acid'
+    ? `${couple.groupName} of ${owner}`
+    : `${couple.groupName} (conjugate acid) of ${owner}`;
+}
+
+/** "0.05 %" with two figures, never 0 or 100 where it is neither. */
+export function percent(share: number): string {
+  const value = 100 * share;
+  if (value < 0.001) return 'less than 0.001 %';
+  if (value < 10) return `${Number(value.toPrecision(2))} %`;
+  return 99.5 < value && value < 100 ? 'more than 99 %' : `${Math.round(value)} %`;
+}
+
+/** The finding for each transfer of one kind. */
+export function reportKind(
+  facts: StepFacts,
+  kind: Kind,
+  write: (judged: Judged) => Partial<Report> & { message: string },
+): Report[] {
+  return judgedTransfers(facts)
+    .filter((judged) => judged.kind === kind)
+    .map((judged) => ({
+      range: judged.range,
+      confidence: judged.verdict.probability,
+      figures: figuresOf(judged.verdict),
+      related: placesOf(facts, judged),
+      ...write(judged),
+    }));
+}
