@@ -12,7 +12,8 @@ export interface KekuleAtom {
   readonly element: string;
   readonly charge: number;
   readonly hydrogens: number;
-  readonly radical: boolean;
+  /** Electrons without a partner. */
+  readonly unpaired: number;
 }
 
 export interface KekuleBond {
@@ -26,6 +27,8 @@ export interface KekuleBond {
 const MOST_FUSED = 6;
 const MOST_COMBINATIONS = 4000;
 const LARGEST_FUSED_RING = 24;
+/** Oxygen and sulfur lend their lone pair only where they also lie in a ring up to this size. */
+const LARGEST_CHALCOGEN_RING = 8;
 
 /** Electronegativity by Pauling, only for the elements that rings hold and what they bear. */
 const ELECTRONEGATIVITY: Readonly<Record<string, number>> = {
@@ -80,10 +83,20 @@ export function findAromatic(
     }
     return value;
   };
-  const candidates = rings.filter((ring) => ring.every((atom) => gives(atom) !== null));
+  const inSmallRing = new Set(rings.filter(({ length }) => length <= LARGEST_CHALCOGEN_RING).flat());
+  const candidates = rings.filter((ring) =>
+    ring.every((atom) => gives(atom) !== null && (inSmallRing.has(atom) || !isDivalent(atom))),
+  );
   const ringBonds = candidates.map((ring) => bondsOfRing(ring, bonds, incident));
-  for (const system of fusedSystems(ringBonds)) markSystem(system);
+  const joined = ringsJoined(ringBonds);
+  for (const system of fusedSystems(joined)) markSystem(system);
   return { atoms: atomFlags, bonds: bondFlags };
+
+  /** Oxygen and sulfur that lend a lone pair. */
+  function isDivalent(atom: number): boolean {
+    const { element, charge } = atoms[atom]!;
+    return charge === 0 && (element === 'O' || element === 'S');
+  }
 
   function markSystem(system: readonly number[]): void {
     const all = new Set(system.flatMap((ring) => ringBonds[ring]!));
@@ -92,22 +105,21 @@ export function findAromatic(
     let subsets: number[][] = system.map((ring) => [ring]);
     for (let size = 1; size <= Math.min(MOST_FUSED, system.length); size++) {
       for (const subset of subsets) {
-        if (size > 1 && subset.some((ring) => LARGEST_FUSED_RING < candidates[ring]!.length)) continue;
         tried += 1;
         if (followsRule(subset)) open -= mark(subset);
       }
       if (open === 0 || MOST_COMBINATIONS < tried) return;
-      subsets = grow(subsets, system, MOST_COMBINATIONS - tried);
+      subsets = grow(subsets, MOST_COMBINATIONS - tried);
     }
   }
 
   /** Each subset with one more ring that shares a bond with it. */
-  function grow(subsets: readonly number[][], system: readonly number[], limit: number): number[][] {
+  function grow(subsets: readonly number[][], limit: number): number[][] {
     const seen = new Set<string>();
     const larger: number[][] = [];
     for (const subset of subsets) {
-      for (const ring of system) {
-        if (subset.includes(ring) || !subset.some((other) => share(other, ring))) continue;
+      for (const ring of new Set(subset.flatMap((each) => joined[each]!))) {
+        if (subset.includes(ring)) continue;
         const next = [...subset, ring].sort((a, b) => a - b);
         const key = next.join(' ');
         if (seen.has(key)) continue;
@@ -117,10 +129,6 @@ export function findAromatic(
       }
     }
     return larger;
-  }
-
-  function share(first: number, second: number): boolean {
-    return ringBonds[first]!.some((bond) => ringBonds[second]!.includes(bond));
   }
 
   function followsRule(subset: readonly number[]): boolean {
@@ -157,10 +165,11 @@ function electronsGiven(
   bonds: readonly KekuleBond[],
   incident: readonly (readonly number[])[],
 ): number | null {
-  const { element, charge, hydrogens, radical } = atoms[atom]!;
+  const { element, charge, hydrogens, unpaired } = atoms[atom]!;
   const outer = OUTER[element];
   const usual = valencesOf(element, 0)?.[0];
-  if (outer === undefined || usual === undefined || usual <= 1 || radical) return null;
+  if (outer === undefined || usual === undefined || usual <= 1) return null;
+  if (0 < unpaired && (element !== 'C' || charge !== 0)) return null;
   const around = incident[atom]!.map((bond) => bonds[bond]!);
   const degree = around.length + hydrogens;
   if (3 < degree) return null;
@@ -170,7 +179,7 @@ function electronsGiven(
   const multiple = around.filter(({ order }) => 1 < order);
   if (1 < multiple.length) return null;
   const lonePairs = Math.max(outer - usual - charge, 0);
-  let available = usual - degree + lonePairs;
+  let available = usual - degree + lonePairs - unpaired;
   if (1 < available && 1 < total - degree) available = 1;
   if (available < 0) return null;
   const bond = multiple[0];
@@ -204,32 +213,44 @@ function bondsOfRing(
   });
 }
 
-/** Groups rings that hang together by shared bonds. */
-function fusedSystems(ringBonds: readonly (readonly number[])[]): number[][] {
+/** Groups rings that hang together by single shared bonds; rings that share more are a cage or a bridge. */
+function fusedSystems(joined: readonly (readonly number[])[]): number[][] {
+  const seen = new Set<number>();
+  const systems: number[][] = [];
+  joined.forEach((_, root) => {
+    if (seen.has(root)) return;
+    seen.add(root);
+    const system = [root];
+    for (let head = 0; head < system.length; head++) {
+      for (const ring of joined[system[head]!]!) {
+        if (seen.has(ring)) continue;
+        seen.add(ring);
+        system.push(ring);
+      }
+    }
+    systems.push(system);
+  });
+  return systems;
+}
+
+/** For each ring the rings that share exactly one bond with it; large rings stand alone. */
+function ringsJoined(ringBonds: readonly (readonly number[])[]): number[][] {
   const ringsOfBond = new Map<number, number[]>();
   ringBonds.forEach((bonds, ring) => {
+    if (LARGEST_FUSED_RING < bonds.length) return;
     for (const bond of bonds) {
       const list = ringsOfBond.get(bond);
       if (list === undefined) ringsOfBond.set(bond, [ring]);
       else list.push(ring);
     }
   });
-  const seen = new Set<number>();
-  const systems: number[][] = [];
-  ringBonds.forEach((_, root) => {
-    if (seen.has(root)) return;
-    seen.add(root);
-    const system = [root];
-    for (let head = 0; head < system.length; head++) {
-      for (const bond of ringBonds[system[head]!]!) {
-        for (const ring of ringsOfBond.get(bond)!) {
-          if (seen.has(ring)) continue;
-          seen.add(ring);
-          system.push(ring);
-        }
-      }
+  return ringBonds.map((bonds, ring) => {
+    const shared = new Map<number, number>();
+    if (bonds.length <= LARGEST_FUSED_RING) {
+      for (const bond of bonds)
+        for (const other of ringsOfBond.get(bond)!)
+          if (other !== ring) shared.set(other, (shared.get(other) ?? 0) + 1);
     }
-    systems.push(system);
+    return [...shared].filter(([, count]) => count === 1).map(([other]) => other);
   });
-  return systems;
 }

@@ -8,7 +8,7 @@
  *  3. Atoms keep the order of the text.
  */
 import { findAromatic } from './aromaticity.ts';
-import { numberOf, valencesOf } from './elements.ts';
+import { isMetal, numberOf, valencesOf } from './elements.ts';
 import type { Graph, GraphAtom, GraphBond } from './graph.ts';
 import { largestMatching } from './matching.ts';
 import type { Atom, Bond, Span, Structure } from './molecule.ts';
@@ -27,6 +27,8 @@ export type GraphReading =
 const ORDERS = { '-': 1, '/': 1, '\\': 1, '=': 2, '#': 3, $: 4, ':': 0 } as const;
 /** An aromatic bond before the double bonds are placed. */
 const OPEN = 0;
+/** Elements whose lone pair may be drawn as a bond to a metal. */
+const DONORS = new Set(['N', 'O', 'P', 'S', 'Cl', 'As', 'Se', 'Br', 'Te', 'I']);
 
 /** What is still being worked out about the atoms and bonds of one structure. */
 interface Draft {
@@ -36,6 +38,8 @@ interface Draft {
   readonly orders: number[];
   readonly charges: number[];
   readonly hydrogens: number[];
+  /** Bonds to metals that are lone pairs of their other end. */
+  readonly dative: Set<number>;
 }
 
 /** The graph of a structure that the reader accepted. */
@@ -50,6 +54,7 @@ export function buildGraph(structure: Structure): GraphReading {
     orders: bonds.map((bond, index) => orderAsWritten(bond, atoms, inRing[index]!)),
     charges: atoms.map(({ charge }) => charge),
     hydrogens: atoms.map(({ writtenHydrogens }) => writtenHydrogens ?? 0),
+    dative: new Set(),
   };
   separateCharges(draft);
   const problem = loneAromatic(draft) ?? placeDoubleBonds(draft) ?? fillHydrogens(draft);
@@ -102,6 +107,13 @@ function loneAromatic({ structure, adjacency, orders, inRing }: Draft): GraphPro
       lone.span,
       `The atom ${lone.element.toLowerCase()} is written as aromatic and stands in no ring; write ${lone.element}.`,
     );
+  }
+  const crowded = structure.atoms.find(
+    ({ index }) => 3 < adjacency.edges[index]!.filter((bond) => orders[bond] === OPEN).length,
+  );
+  if (crowded !== undefined) {
+    const message = `This aromatic ${crowded.element.toLowerCase()} has more than three aromatic bonds.`;
+    return { check: 'impossible-valence', message, span: crowded.span };
   }
   const bond = structure.bonds.find(
     ({ from, to }, index) =>
@@ -160,8 +172,8 @@ function notKekule({ atoms }: Structure, atom: number): GraphProblem {
 function fillHydrogens(draft: Draft): GraphProblem | null {
   const { structure, charges, hydrogens } = draft;
   for (const { element, writtenHydrogens, aromatic, index, span } of structure.atoms) {
-    const bonds = orderSum(draft, index);
     const valences = valencesOf(element, charges[index]!);
+    const bonds = bondsThatCount(draft, index, valences);
     if (writtenHydrogens === undefined && !aromatic && valences !== null) {
       const valence = valences.find((allowed) => bonds <= allowed);
       if (valence !== undefined && charges[index] === 0) hydrogens[index] = valence - bonds;
@@ -178,23 +190,33 @@ function fillHydrogens(draft: Draft): GraphProblem | null {
   return null;
 }
 
-/** The largest number of bonds; chlorine, bromine and iodine take more when oxygen is doubly bound to them. */
-function mostBonds(
-  { structure, adjacency, orders, charges }: Draft,
-  atom: number,
-  valences: readonly number[],
-): number {
+/** Sum of bond orders; where they are too many, one single bond to a metal is the atom's lone pair and does not count. */
+function bondsThatCount(draft: Draft, atom: number, valences: readonly number[] | null): number {
+  const { structure, adjacency, orders, hydrogens } = draft;
+  const sum = orderSum(draft, atom);
+  const most = valences?.[valences.length - 1] ?? Number.POSITIVE_INFINITY;
+  if (sum + hydrogens[atom]! <= most || !DONORS.has(structure.atoms[atom]!.element)) return sum;
+  const dative = adjacency.edges[atom]!.find(
+    (bond, place) =>
+      orders[bond] === 1 && isMetal(structure.atoms[adjacency.neighbours[atom]![place]!]!.element),
+  );
+  if (dative === undefined) return sum;
+  draft.dative.add(dative);
+  return sum - 1;
+}
+
+/** The largest number of bonds; chlorine, bromine and iodine take up to seven when all of them lead to oxygen. */
+function mostBonds(draft: Draft, atom: number, valences: readonly number[]): number {
+  const { structure, adjacency, charges } = draft;
   const most = valences[valences.length - 1] ?? 0;
   const { element } = structure.atoms[atom]!;
   if (charges[atom] !== 0 || (element !== 'Cl' && element !== 'Br' && element !== 'I')) return most;
-  const oxo = adjacency.edges[atom]!.some(
-    (bond, place) =>
-      orders[bond] === 2 && structure.atoms[adjacency.neighbours[atom]![place]!]!.element === 'O',
-  );
-  return oxo ? 7 : most;
+  const oxygens = adjacency.neighbours[atom]!.every((other) => structure.atoms[other]!.element === 'O');
+  const sum = orderSum(draft, atom);
+  return oxygens && sum % 2 === 1 && sum <= 7 ? 7 : most;
 }
 
-function finish({ structure, adjacency, inRing, orders, charges, hydrogens }: Draft): Graph {
+function finish({ structure, adjacency, inRing, orders, charges, hydrogens, dative }: Draft): Graph {
   const { atoms, bonds } = structure;
   const rings = smallestRings(atoms.length, bonds, adjacency, inRing);
   const kekuleBonds = bonds.map(({ from, to }, bond) => ({
@@ -203,13 +225,14 @@ function finish({ structure, adjacency, inRing, orders, charges, hydrogens }: Dr
     order: orders[bond]!,
     inRing: inRing[bond]!,
   }));
+  const incident = adjacency.edges.map((edges) => edges.filter((bond) => !dative.has(bond)));
   const kekuleAtoms = atoms.map(({ element, index }) => {
-    const used = hydrogens[index]! + adjacency.edges[index]!.reduce((sum, bond) => sum + orders[bond]!, 0);
+    const used = hydrogens[index]! + incident[index]!.reduce((sum, bond) => sum + orders[bond]!, 0);
     const valences = valencesOf(element, charges[index]!);
-    const radical = charges[index] === 0 && valences !== null && !valences.includes(used);
-    return { element, charge: charges[index]!, hydrogens: hydrogens[index]!, radical };
+    const unpaired = valences?.find((valence) => used <= valence) ?? used;
+    return { element, charge: charges[index]!, hydrogens: hydrogens[index]!, unpaired: unpaired - used };
   });
-  const aromatic = findAromatic(kekuleAtoms, kekuleBonds, adjacency.edges, rings);
+  const aromatic = findAromatic(kekuleAtoms, kekuleBonds, incident, rings);
   return {
     atoms: atoms.map(
       ({ index, element, isotope, mapNumber, span }): GraphAtom => ({

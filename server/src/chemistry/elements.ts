@@ -29,6 +29,7 @@ const NUMBERS = new Map(SYMBOLS.map((symbol, index) => [symbol, index + 1]));
 const VALENCES: Readonly<Record<string, readonly number[]>> = {
   H: [1],
   He: [0],
+  Be: [2],
   B: [3],
   C: [4],
   N: [3],
@@ -37,53 +38,38 @@ const VALENCES: Readonly<Record<string, readonly number[]>> = {
   Ne: [0],
   Al: [3],
   Si: [4],
-  P: [3, 5, 7],
+  P: [3, 5],
   S: [2, 4, 6],
   Cl: [1],
   Ar: [0],
   Ga: [3],
   Ge: [4],
-  As: [3, 5, 7],
+  As: [3, 5],
   Se: [2, 4, 6],
   Br: [1],
   Kr: [0],
   In: [3],
   Sn: [2, 4],
-  Sb: [3, 5, 7],
+  Sb: [3, 5],
   Te: [2, 4, 6],
   I: [1, 3, 5],
   Xe: [0, 2, 4, 6],
-  Tl: [1, 3],
   Pb: [2, 4],
-  Bi: [3, 5, 7],
+  Bi: [3, 5],
+  Cs: [1],
+  Po: [2, 4, 6],
   At: [1, 3, 5],
+  Rn: [0],
+  Fr: [1],
 };
 
-/** Elements whose number of bonds does not change with their charge by the rule of equal electron counts. */
-const EARLY = new Set([
-  'H',
-  'B',
-  'C',
-  'N',
-  'O',
-  'F',
-  'Al',
-  'Si',
-  'P',
-  'S',
-  'Cl',
-  'Ga',
-  'Ge',
-  'As',
-  'Se',
-  'Br',
-  'Sn',
-  'Sb',
-  'Te',
-  'I',
-  'Bi',
-  'Pb',
-]);
+/**
+ * Anions of these elements widen their own shell, instead of becoming like a later element, once they would have more
+ * electrons than the number given here: PF6− is like SF6, but (CH3)2S−R is no chlorine.
+ */
+const WIDENING: Readonly<Record<string, number>> = { P: 16, S: 16, As: 34, Se: 34 };
+
+const NON_METALS = new Set('H He B C N O F Ne Si P S Cl Ar As Se Br Kr Te I Xe At Rn'.split(' '));
 
 /** Atomic number; 0 for an unknown symbol. */
 export function numberOf(element: string): number {
@@ -95,6 +81,11 @@ export function symbolOf(number: number): string {
   return SYMBOLS[number - 1] ?? '';
 }
 
+/** Whether a lone pair may lead to this element as a bond of its own. */
+export function isMetal(element: string): boolean {
+  return !NON_METALS.has(element);
+}
+
 /** Average mass in g/mol; NaN for elements without a usual one. */
 export function massOf(element: string): number {
   return MASSES[numberOf(element) - 1] ?? Number.NaN;
@@ -103,11 +94,16 @@ export function massOf(element: string): number {
 /**
  * Numbers of bonds, hydrogens included, that an atom of this charge may have, fewest first.
  *
- * Null where any number goes. A charged atom is counted like the neutral element with as many electrons: N+ like C.
+ * Null where any number goes, as for metals. A charged atom is counted like the neutral element with as many
+ * electrons: N+ like C. (tests/chemistry/elements.test.ts compares every element and charge with RDKit)
  */
 export function valencesOf(element: string, charge: number): readonly number[] | null {
-  if (charge === 0) return VALENCES[element] ?? null;
-  if (!EARLY.has(element)) return null;
-  const other = symbolOf(numberOf(element) - charge);
-  return other === '' ? [0] : (VALENCES[other] ?? null);
+  const own = VALENCES[element];
+  if (charge === 0 || own === undefined) return own ?? null;
+  if (element === 'H') return null;
+  const electrons = numberOf(element) - charge;
+  if ((WIDENING[element] ?? Number.POSITIVE_INFINITY) < electrons) {
+    return own.map((valence) => valence + charge).filter((valence) => 0 <= valence);
+  }
+  return VALENCES[symbolOf(electrons)] ?? null;
 }

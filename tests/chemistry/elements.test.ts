@@ -1,0 +1,38 @@
+import { beforeAll, expect, test } from 'vitest';
+import { massOf, numberOf, symbolOf, valencesOf } from '../../server/src/chemistry/elements.ts';
+import { loadRDKit, type RDKit, readByRDKit } from './rdkit.ts';
+
+let rdkit: RDKit;
+beforeAll(async () => {
+  rdkit = await loadRDKit();
+});
+
+test('every element and charge may have as many bonds as RDKit allows', () => {
+  const differences: string[] = [];
+  for (let number = 2; number <= 118; number++) {
+    for (let charge = -4; charge <= 4; charge++) {
+      for (let hydrogens = 0; hydrogens <= 8; hydrogens++) {
+        const count = hydrogens === 0 ? '' : `H${hydrogens}`;
+        const text = `[${symbolOf(number)}${count}${charge < 0 ? charge : charge === 0 ? '' : `+${charge}`}]`;
+        const valences = valencesOf(symbolOf(number), charge);
+        const ours = valences === null || hydrogens <= Math.max(0, ...valences);
+        if (ours !== (readByRDKit(rdkit, text) !== null)) differences.push(`${text} ${ours}`);
+      }
+    }
+  }
+  expect(differences).toEqual([]);
+});
+
+test('symbols and numbers name each other, and an unknown symbol has no number', () => {
+  for (let number = 1; number <= 118; number++) expect(numberOf(symbolOf(number))).toBe(number);
+  expect(numberOf('Xy')).toBe(0);
+  expect(symbolOf(0)).toBe('');
+});
+
+test('masses are the average ones and missing where there is none', () => {
+  expect(massOf('C')).toBe(12.011);
+  expect(massOf('Cl')).toBe(35.45);
+  expect(massOf('Br')).toBe(79.904);
+  expect(massOf('I')).toBe(126.9);
+  expect(massOf('Og')).toBeNaN();
+});

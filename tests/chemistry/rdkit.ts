@@ -1,0 +1,68 @@
+/**
+ * The independent reader that structures, aromaticity and patterns are compared with.
+ */
+import initRDKit, { type MainModule } from '@rdkit/rdkit';
+
+export type RDKit = MainModule;
+type Molecule = NonNullable<ReturnType<RDKit['get_mol']>>;
+
+export interface ReadByRDKit {
+  readonly elements: readonly number[];
+  readonly hydrogens: readonly number[];
+  readonly charges: readonly number[];
+  readonly aromaticAtoms: readonly number[];
+  /** Ends of the aromatic bonds, the lower index first. */
+  readonly aromaticBonds: readonly string[];
+}
+
+export async function loadRDKit(): Promise<RDKit> {
+  return initRDKit({ logLevel: 'critical' } as never);
+}
+
+const AS_WRITTEN = JSON.stringify({ removeHs: false });
+
+/** What RDKit makes of a text after its sanitizer; null where it refuses. */
+export function readByRDKit(rdkit: RDKit, smiles: string): ReadByRDKit | null {
+  // RDKit has no JSON for the empty text.
+  const molecule = smiles === '' ? null : moleculeOf(rdkit, smiles);
+  if (molecule === null) return null;
+  const { molecules, defaults } = JSON.parse(molecule.get_json());
+  molecule.delete();
+  const { atoms, bonds, extensions } = molecules[0];
+  const marks = extensions?.find(({ name }: { name: string }) => name === 'rdkitRepresentation') ?? {};
+  return {
+    elements: atoms.map(({ z }: { z?: number }) => z ?? defaults.atom.z),
+    hydrogens: atoms.map(({ impHs }: { impHs?: number }) => impHs ?? 0),
+    charges: atoms.map(({ chg }: { chg?: number }) => chg ?? 0),
+    aromaticAtoms: [...(marks.aromaticAtoms ?? [])].sort((a: number, b: number) => a - b),
+    aromaticBonds: (marks.aromaticBonds ?? [])
+      .map((bond: number) => [...bonds[bond].atoms].sort((a: number, b: number) => a - b).join('-'))
+      .sort(),
+  };
+}
+
+/** Atom sets that a SMARTS fits, each sorted, all sorted; null where RDKit refuses text or pattern. */
+export function matchByRDKit(rdkit: RDKit, smiles: string, smarts: string): string[] | null {
+  const molecule = moleculeOf(rdkit, smiles);
+  const pattern = rdkit.get_qmol(smarts);
+  const found =
+    molecule === null || pattern === null
+      ? null
+      : (JSON.parse(molecule.get_substruct_matches(pattern, JSON.stringify({ maxMatches: 100_000 }))) as {
+          atoms: number[];
+        }[]);
+  molecule?.delete();
+  pattern?.delete();
+  if (found === null) return null;
+  // Where nothing fits the answer is an empty object.
+  return (Array.isArray(found) ? found : []).map(({ atoms }) => atoms.sort((a, b) => a - b).join(' ')).sort();
+}
+
+/** RDKit throws on a few texts, such as one with too many ring digits; that is a refusal too. */
+function moleculeOf(rdkit: RDKit, smiles: string): Molecule | null {
+  try {
+    return rdkit.get_mol(smiles, AS_WRITTEN);
+  } catch {
+    return null;
+  }
+}
