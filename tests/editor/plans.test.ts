@@ -41,7 +41,10 @@ async function hoverText(): Promise<string> {
 async function editorText(): Promise<string> {
   const lines = await workbench.page.locator('.editor-instance .view-lines .view-line').all();
   const placed = await Promise.all(
-    lines.map(async (line) => ({ y: (await line.boundingBox())?.y ?? 0, text: await line.innerText() })),
+    lines.map(async (line) => ({
+      y: (await line.boundingBox())?.y ?? 0,
+      text: (await line.textContent()) ?? '',
+    })),
   );
   return placed
     .sort((a, b) => a.y - b.y)
@@ -70,7 +73,7 @@ describe('findings', () => {
     await workbench.page.keyboard.press('Control+Shift+M');
     const row = workbench.page.locator('.markers-panel .monaco-list-row', { hasText: 'LDDA' }).first();
     await row.waitFor();
-    expect(await row.innerText()).toContain('unknown-name');
+    expect(await row.textContent()).toContain('unknown-name');
     await workbench.page.keyboard.press('Control+Shift+M');
   });
 

@@ -6,7 +6,7 @@ export default defineConfig({
     include: ['tests/editor/**/*.test.ts'],
     globalSetup: ['tests/editor/setup.ts'],
     fileParallelism: false,
-    testTimeout: 90_000,
+    testTimeout: 150_000,
     hookTimeout: 180_000,
     reporters: ['default', 'json'],
     outputFile: { json: '.cache/editor-tests.json' },

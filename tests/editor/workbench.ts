@@ -79,6 +79,8 @@ export async function startWorkbench(
   await answers(`${address}/version`);
   const browser = await chromium.launch({ executablePath: BROWSER, args: ARGUMENTS });
   const page = await browser.newPage({ viewport: { width: 1280, height: 800 } });
+  // Generous, because the machine that runs this may be busy with much else.
+  page.setDefaultTimeout(60_000);
   await page.goto(`${address}/?folder=${folder}`);
   await ready(page);
   return driver(page, browser, server, folder);

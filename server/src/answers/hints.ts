@@ -4,8 +4,10 @@
  * Knows: analysed plans.  Must not know: the protocol, what the user wants to see.
  */
 import type { Moment, TransferFact } from '../checks/facts.ts';
-import type { Amount, Range, Statement } from '../route/plan.ts';
-import { amountOf, oneDecimal, percent } from './figures.ts';
+import { lineAt } from '../route/document.ts';
+import type { Range, Statement } from '../route/plan.ts';
+import type { LineTree } from '../route/tree.ts';
+import { amountOf, figure, oneDecimal, percent } from './figures.ts';
 import { shiftRange } from './ranges.ts';
 import type { Analysed } from './types.ts';
 
@@ -33,7 +35,7 @@ export function hintsIn(
     for (const statement of placed.statements) {
       const line = firstLine + statement.range.start.line;
       if (line < first || last < line) continue;
-      if (kinds.has('amounts')) hints.push(...amountHint(statement));
+      if (kinds.has('amounts')) hints.push(...amountHint(statement, lineAt(plan.document, line)));
       if (kinds.has('transfers')) hints.push(...transferHint(statement, facts.transfers));
       if (kinds.has('pH')) hints.push(...pHHint(statement, facts.moments));
     }
@@ -41,24 +43,19 @@ export function hintsIn(
   });
 }
 
-function amountHint(statement: Statement): Hint[] {
+function amountHint(statement: Statement, tree: LineTree | null): Hint[] {
   if (!('amount' in statement) || statement.keyword === 'solvent' || statement.keyword === 'wash') return [];
-  const { amount } = statement;
-  if (amount.range === null || amount.mol === null || amount.assumed || writtenInMol(amount)) return [];
-  const equiv = amount.equiv === null ? '' : `, ${oneDecimal(amount.equiv)} equiv`;
-  return [
-    {
-      kind: 'amounts',
-      behind: amount.range,
-      text: `= ${amountOf(amount.mol)}`,
-      tooltip: `${amountOf(amount.mol)}${equiv}`,
-    },
-  ];
+  const { range, mol, equiv, assumed } = statement.amount;
+  if (range === null || mol === null || assumed || tree === null || writtenInMol(tree)) return [];
+  const share = equiv === null ? '' : `, ${figure(equiv)} equiv`;
+  const text = `= ${amountOf(mol)}`;
+  return [{ kind: 'amounts', behind: range, text, tooltip: `${amountOf(mol)}${share}` }];
 }
 
-/** What is written in mol needs no hint; an amount in mol carries neither mass nor volume of its own. */
-function writtenInMol({ equiv, mass, volume, qualifier }: Amount): boolean {
-  return (equiv === null && mass === null && volume === null) || qualifier !== null;
+/** What is written in mol needs no hint. */
+function writtenInMol({ syntax }: LineTree): boolean {
+  if (syntax === null || !('amounts' in syntax)) return false;
+  return syntax.amounts.some((each) => each.kind === 'quantity' && each.quantity.dimension === 'substance');
 }
 
 function transferHint(statement: Statement, transfers: readonly TransferFact[]): Hint[] {
