@@ -15,11 +15,22 @@ step A "Enolate"
   temperature -78 °C
   deprotonate ketone
 `;
+const UPHILL = `plan "Side chain"
+
+compound ketone = O=C([CH3:1])c1ccccc1
+
+step A "Enolate"
+  solvent     water 30 mL
+  charge      ketone 1.2 g
+  base        NaOH 1.1 equiv
+  deprotonate ketone at :1
+`;
 let workbench: Workbench;
 
 beforeAll(async () => {
   workbench = await startWorkbench({
     'mistake.lyate': MISTAKE,
+    'uphill.lyate': UPHILL,
     'structure.lyate': 'compound broken = CC(=O\nstep A\n  charge broken 1 mmol\n',
     'shared.lyate': 'compound acid = CC(=O)O\n',
     'uses.lyate':
@@ -37,6 +48,14 @@ async function hoverText(): Promise<string> {
   return (await workbench.page.locator('.monaco-hover:not(.hidden)').allInnerTexts()).join('\n');
 }
 
+/** Types one word over another that stands at column 15. */
+async function replaceInLine(line: number, word: string, other: string): Promise<void> {
+  await workbench.goTo(line, 15);
+  for (let at = 0; at < word.length; at++) await workbench.page.keyboard.press('Delete');
+  await workbench.page.keyboard.type(other);
+  await workbench.page.keyboard.press('Escape');
+}
+
 /** Everything the editor shows, as text. */
 async function editorText(): Promise<string> {
   const lines = await workbench.page.locator('.editor-instance .view-lines .view-line').all();
@@ -51,6 +70,41 @@ async function editorText(): Promise<string> {
     .map(({ text }) => text.replaceAll('\u00a0', ' '))
     .join('\n');
 }
+
+describe('chemistry', () => {
+  it('a transfer that goes uphill is underlined at its site, and the hover gives the figures', async () => {
+    await workbench.openFile('uphill.lyate');
+    const squiggle = workbench.squiggles('error').first();
+    await squiggle.waitFor();
+    const box = (await squiggle.boundingBox())!;
+    const site = (await workbench.page
+      .locator('.view-line', { hasText: 'deprotonate' })
+      .getByText(':1')
+      .first()
+      .boundingBox())!;
+    expect(Math.abs(box.x - site.x)).toBeLessThan(3);
+    await workbench.page.mouse.move(box.x + box.width / 2, box.y + 2);
+    const text = await hoverText();
+    expect(text).toContain('transfer-uphill');
+    expect(text).toMatch(/too weak/);
+    await workbench.screenshot('uphill');
+    await workbench.page.mouse.move(640, 700);
+  });
+
+  it('its compound shows structure and sites', async () => {
+    const name = workbench.page.locator('.view-line', { hasText: 'charge' }).getByText('ketone').first();
+    await name.hover();
+    await workbench.page.locator('.monaco-hover:not(.hidden) table', { hasText: '18.3' }).first().waitFor();
+    await workbench.screenshot('hover-sites');
+    await workbench.page.mouse.move(640, 700);
+  });
+
+  it('a strong base in an ether clears it', async () => {
+    await replaceInLine(6, 'water', 'THF');
+    await replaceInLine(8, 'NaOH', 'LDA');
+    await expect.poll(() => workbench.squiggles('error').count(), { timeout: 15_000 }).toBe(0);
+  });
+});
 
 describe('findings', () => {
   it('underline the exact word, and the hover says why', async () => {
