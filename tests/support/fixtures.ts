@@ -7,7 +7,7 @@
  *            ^^^^ error transfer-uphill "too weak"
  *
  * It points at the line above it and is taken out before the plan is analysed. A plan without markers asserts
- * silence. A fence of the kind `lyate sound` allows information and hints besides its markers, because sound practice
+ * silence. A fence of the kind `lyate sound` or `lyate flawed` allows information and hints besides its markers, because sound practice
  * may be commented on but never blamed.
  */
 import type { Finding } from '../../server/src/checks/finding.ts';
@@ -39,7 +39,8 @@ export function readFixtures(markdown: string): Fixture[] {
   for (const line of markdown.split('\n')) {
     if (block === null) {
       if (line.startsWith('#')) title = line.replace(/^#+\s*/, '');
-      if (/^```lyate\b/.test(line)) block = { lines: [], markers: [], sound: line.includes('sound') };
+      if (/^```lyate\b/.test(line))
+        block = { lines: [], markers: [], sound: line.includes('sound') || line.includes('flawed') };
       continue;
     }
     if (line.startsWith('```')) {

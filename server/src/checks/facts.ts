@@ -7,7 +7,9 @@
  */
 import type { Conversion } from '../flask/convert.ts';
 import type { Contents, FlaskState, Ingredient, Verdict } from '../flask/state.ts';
+import type { Titration } from '../flask/titrate.ts';
 import type {
+  AdjustStatement,
   ConvertStatement,
   Range,
   Statement,
@@ -55,7 +57,13 @@ export interface ConvertFact {
   readonly conversion: Conversion;
 }
 
+export interface AdjustFact {
+  readonly statement: AdjustStatement;
+  readonly titration: Titration;
+}
+
 export interface StepFacts {
+  readonly adjustments: readonly AdjustFact[];
   readonly step: Step;
   /** What the reader found wrong in the step's own lines. */
   readonly problems: readonly TextProblem[];

@@ -12,8 +12,10 @@ import { balanceConversion, type Conversion } from '../flask/convert.ts';
 import { type Intent, judgeTransfer } from '../flask/judge.ts';
 import { solveFlask } from '../flask/solve.ts';
 import type { Contents, FlaskState, Ingredient, Role, Verdict } from '../flask/state.ts';
+import { titrateTo } from '../flask/titrate.ts';
 import type {
   AddStatement,
+  AdjustStatement,
   Amount,
   ConvertStatement,
   SolventStatement,
@@ -23,7 +25,7 @@ import type {
   TransferStatement,
 } from '../route/plan.ts';
 import type { Tables } from '../tables/tables.ts';
-import type { Addition, ConvertFact, Moment, StepFacts, TransferFact } from './facts.ts';
+import type { Addition, AdjustFact, ConvertFact, Moment, StepFacts, TransferFact } from './facts.ts';
 import type { Settings } from './settings.ts';
 
 const ROOM = 298.15;
@@ -48,6 +50,7 @@ class Filling {
   private readonly moments: Moment[] = [];
   private readonly transfers: TransferFact[] = [];
   private readonly conversions: ConvertFact[] = [];
+  private readonly adjustments: AdjustFact[] = [];
   private ingredients: Ingredient[] = [];
   private temperature: number;
   private next = 0;
@@ -91,6 +94,9 @@ class Filling {
       case 'protonate':
         this.judge(statement);
         break;
+      case 'adjust':
+        this.adjust(statement);
+        break;
       case 'convert':
         this.convert(statement);
         break;
@@ -101,7 +107,7 @@ class Filling {
   }
 
   facts(): StepFacts {
-    const { step, additions, moments, transfers, conversions, tables, settings } = this;
+    const { step, additions, moments, transfers, conversions, adjustments, tables, settings } = this;
     return {
       step,
       problems: step.problems,
@@ -109,6 +115,7 @@ class Filling {
       moments,
       transfers,
       conversions,
+      adjustments,
       left: this.contents(),
       tables,
       settings,
@@ -215,6 +222,29 @@ class Filling {
       }
     }
     this.transfers.push({ statement, contents, verdicts, convert, ingredient: one });
+  }
+
+  /** Adds as much as the pH asks for; what cannot be reached adds nothing. */
+  private adjust(statement: AdjustStatement): void {
+    const { substance, amount, pH } = statement;
+    this.add(statement, substance, amount, 'quench');
+    const added = this.ingredients.find(
+      ({ name, role }) =>
+        name === substance.name &&
+        role === 'quench' &&
+        this.additions.some((one) => one.statement === statement && one.ingredient.name === name),
+    );
+    if (added === undefined) return;
+    const others = this.ingredients.filter((one) => one !== added);
+    const titration = titrateTo(
+      { ...this.contents(), ingredients: others },
+      pH,
+      added,
+      this.tables,
+      constantsIn,
+    );
+    this.adjustments.push({ statement, titration });
+    this.ingredients = titration.mol === null ? others : [...others, { ...added, mol: titration.mol }];
   }
 
   /** The next conversion of the step that uses up what the transfer makes. */

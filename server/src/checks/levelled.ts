@@ -18,7 +18,11 @@ export default defineCheck({
     for (const fate of reagentFates(facts.transfers[0]!.contents, facts.tables, constantsIn)) {
       if (!fate.isLevelled || fate.share < 0.5) continue;
       const addition = facts.additions.find(({ ingredient }) => ingredient.id === fate.ingredient);
-      if (addition?.statement?.keyword !== 'base' || addition.ingredient.reagent?.roles.includes('hydroxide'))
+      if (
+        addition?.statement?.keyword !== 'base' ||
+        addition.ingredient.role !== 'base' ||
+        addition.ingredient.reagent?.roles.includes('hydroxide')
+      )
         continue;
       yield {
         range: addition.range,

@@ -12,7 +12,8 @@ export default defineCheck({
   sources: ['common-practice'],
   *inStep(facts) {
     for (const { ingredient, range, statement } of facts.additions) {
-      if (statement?.keyword !== 'acid' || ingredient.molecule === null) continue;
+      if (statement?.keyword !== 'acid' || ingredient.role !== 'acid' || ingredient.molecule === null)
+        continue;
       const roles: readonly string[] = ingredient.reagent?.roles ?? [];
       if (roles.some((role) => ACTS.has(role))) continue;
       const able = ingredient.molecule.couples.some(

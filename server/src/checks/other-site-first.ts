@@ -1,7 +1,7 @@
 /** Another site in the flask gives (takes) its proton before the intended one, and the amount does not cover both. */
 
 import { defineCheck } from './define.ts';
-import { nameOf, percent, reportKind, severityOf, unit } from './verdicts.ts';
+import { nameOf, reportKind, unit } from './verdicts.ts';
 
 export default defineCheck({
   name: 'other-site-first',

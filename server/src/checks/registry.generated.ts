@@ -20,6 +20,7 @@ import noRule from './no-rule.ts';
 import notABase from './not-a-base.ts';
 import notAnAcid from './not-an-acid.ts';
 import otherSiteFirst from './other-site-first.ts';
+import pHOutOfReach from './pH-out-of-reach.ts';
 import reagentEatenByProton from './reagent-eaten-by-proton.ts';
 import siteNotFound from './site-not-found.ts';
 import solventAttacked from './solvent-attacked.ts';
@@ -56,6 +57,7 @@ export const CHECKS: readonly Check[] = [
   notABase,
   notAnAcid,
   otherSiteFirst,
+  pHOutOfReach,
   reagentEatenByProton,
   siteNotFound,
   solventAttacked,

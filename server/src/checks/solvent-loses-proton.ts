@@ -42,7 +42,8 @@ step A
         if (
           base === undefined ||
           !base.ingredient.reagent?.roles.some((role) => FOR_GOOD.has(role)) ||
-          said.has(base.ingredient.name)
+          said.has(base.ingredient.name) ||
+          ADDS_TO.has(solvent?.ingredient.solvent?.kind ?? '')
         )
           continue;
         said.add(base.ingredient.name);
@@ -65,3 +66,5 @@ step A
 
 /** Reagents that never come back once a proton has been taken. */
 const FOR_GOOD = new Set<string>(['metal-hydride', 'metal-amide', 'organometallic', 'aluminium-hydride']);
+/** Solvents whose carbonyl group is attacked before a proton moves; another finding says so. */
+const ADDS_TO = new Set(['amide', 'ester', 'carbonate', 'urea']);

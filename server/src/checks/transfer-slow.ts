@@ -1,7 +1,7 @@
 /** The intended proton transfer is downhill and does not take place under these conditions. */
 
 import { defineCheck } from './define.ts';
-import { nameOf, percent, reportKind, severityOf, unit } from './verdicts.ts';
+import { nameOf, reportKind } from './verdicts.ts';
 
 export default defineCheck({
   name: 'transfer-slow',

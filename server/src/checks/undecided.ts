@@ -1,7 +1,7 @@
 /** The uncertainty of the constants leaves the transfer open. */
 
 import { defineCheck } from './define.ts';
-import { nameOf, percent, reportKind, severityOf, unit } from './verdicts.ts';
+import { nameOf, reportKind, unit } from './verdicts.ts';
 
 export default defineCheck({
   name: 'undecided',

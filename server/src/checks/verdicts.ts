@@ -25,6 +25,8 @@ export interface Judged {
 }
 
 const FAILED = 0.1;
+/** Reagents that never come back once a proton has been taken. */
+const FOR_GOOD = new Set<string>(['metal-hydride', 'metal-amide', 'organometallic', 'aluminium-hydride']);
 /** Sites of less than this share of the intended one take no base worth naming. */
 const WORTH_NAMING = 0.05;
 /** A base that covers this share of the sites covers them. */
@@ -55,8 +57,11 @@ function kindOf(
 ): { kind: Kind; ahead: readonly Site[] } {
   const none: readonly Site[] = [];
   if (verdict.allowances.includes('already')) return { kind: 'fine', ahead: none };
-  if (verdict.kinetics !== 'instant' && verdict.allowances.includes('slow') && verdict.answer !== 'yes')
+  if (isSpentOnSolvent(facts, verdict)) return { kind: 'fine', ahead: none };
+  if (verdict.kinetics !== 'instant' && verdict.allowances.includes('slow'))
     return { kind: 'slow', ahead: none };
+  const spent = spentOn(fact, verdict);
+  if (spent !== null) return { kind: 'other-site', ahead: [spent] };
   const ahead = sitesAhead(facts, fact, verdict);
   const needed = ahead.reduce((sum, { share }) => sum + share, 0);
   if (0 < verdict.logK && needed !== 0 && verdict.capacity < needed + COVERED && verdict.extent < COVERED) {
@@ -68,6 +73,28 @@ function kindOf(
   if (verdict.answer === 'undecided') return { kind: 'undecided', ahead: none };
   if (needed !== 0 && 0 < verdict.logK) return { kind: 'other-site', ahead: ahead.map(({ site }) => site) };
   return { kind: verdict.extent < FAILED ? 'uphill' : 'partial', ahead: none };
+}
+
+/** A base that its solvent has eaten for good is the solvent's finding, not the transfer's. */
+function isSpentOnSolvent({ additions }: StepFacts, { partner, broughtBy }: Verdict): boolean {
+  const find = (id: number | null | undefined) =>
+    additions.find(({ ingredient }) => ingredient.id === id)?.ingredient;
+  if (find(partner?.ingredient)?.role !== 'solvent') return false;
+  return find(broughtBy)?.reagent?.roles.some((role) => FOR_GOOD.has(role)) ?? false;
+}
+
+/** The site of another compound that the base (acid) was spent on, where only that one's ion is left to act. */
+function spentOn(
+  { contents, statement }: TransferFact,
+  { partner, extent, broughtBy }: Verdict,
+): Site | null {
+  if (partner === null || broughtBy !== null || 0.5 < extent) return null;
+  const role = statement.keyword === 'deprotonate' ? 'base' : 'acid';
+  const one = contents.ingredients.find(({ id }) => id === partner.ingredient);
+  const hasOther = contents.ingredients.some(
+    (other) => other.role === role && other.id !== partner.ingredient,
+  );
+  return one?.role === 'compound' && hasOther ? partner : null;
 }
 
 function isCatalytic({ convert }: TransferFact, { capacity, allowances }: Verdict): boolean {

@@ -26,6 +26,9 @@ export default defineCheck({
           (couple.kind === 'base') === 0.5 < protonated &&
           (couple.kind === 'base' ? 0.5 < protonated : protonated < 0.5),
       );
+      // Acid chlorides in an alcohol set free the acid that makes the salt.
+      if (before.contents.ingredients.some(({ reagent }) => reagent?.roles.includes('halogenating')))
+        continue;
       const wants = statement.state !== 'neutral';
       if (statement.state === 'zwitterion' || charged === wants || states.length === 0) continue;
       yield {

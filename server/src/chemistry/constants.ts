@@ -35,6 +35,10 @@ export interface ValueTables {
 
 const REMEMBERED = 6000;
 const remembered = boundedCache<string, MoleculeConstants>(REMEMBERED);
+/** Families that lend their correlation to those without one, nearest first, and what that costs in sd. */
+const RELATED_ACIDS = ['carbon-acid', 'alcohol', 'phenol', 'carboxylic-acid', 'any'];
+const RELATED_BASES = ['ammonium', 'pyridinium', 'any'];
+const RELATED_SD = 1.5;
 /** Outside the range of a correlation each unit costs this much more sd. */
 const EXTRAPOLATION_SD = 0.15;
 
@@ -121,32 +125,40 @@ function parentOn(
   };
 }
 
-/** A constant on another scale by the correlation of its family, directly or by way of water; null where none leads there. */
+/** A constant on another scale by the correlation of its family, directly or on the way; a related family's as a last resort. */
 export function carry(constant: Constant, couple: Couple, to: ScaleId, tables: ValueTables): Constant | null {
   if (constant.scale === to) return constant;
-  const direct = rowFor(constant.scale, to, couple, tables);
-  if (direct !== undefined) return apply(constant, direct);
-  for (const way of ['water', 'DMSO']) {
-    const first =
-      way === constant.scale || way === to ? undefined : rowFor(constant.scale, way, couple, tables);
-    const second = first === undefined ? undefined : rowFor(way, to, couple, tables);
-    if (first !== undefined && second !== undefined) return apply(apply(constant, first), second);
+  for (const related of [false, true]) {
+    const direct = rowFor(constant.scale, to, couple, tables, related);
+    if (direct !== undefined) return apply(constant, direct);
+    for (const way of ['DMSO', 'water']) {
+      if (way === constant.scale || way === to) continue;
+      const second = rowFor(way, to, couple, tables, related);
+      const first = rowFor(constant.scale, way, couple, tables, related);
+      if (second === undefined) continue;
+      const there = parentOn(couple, way, tables) ?? (first === undefined ? null : apply(constant, first));
+      if (there !== null) return apply(there, second);
+    }
   }
   return null;
 }
 
+/** The row of a family, or with `related` that of a family like it, at a cost. */
 function rowFor(
   from: ScaleId,
   to: ScaleId,
   { family, kind }: Couple,
   { scales }: ValueTables,
+  related: boolean,
 ): ScaleRow | undefined {
   const rows = scales.filter((row) => row.from === from && row.to === to);
-  return (
-    rows.find((row) => row.family === family) ??
-    rows.find((row) => row.family === (kind === 'acid' ? '*acid' : '*base')) ??
-    rows.find((row) => row.family === '*')
-  );
+  const own = rows.find((row) => row.family === family);
+  if (own !== undefined || !related) return own;
+  for (const other of kind === 'acid' ? RELATED_ACIDS : RELATED_BASES) {
+    const row = rows.find((candidate) => candidate.family === other);
+    if (row !== undefined) return { ...row, sd: Math.hypot(row.sd, RELATED_SD) };
+  }
+  return undefined;
 }
 
 function apply(constant: Constant, row: ScaleRow): Constant {

@@ -161,7 +161,19 @@ function uncoveredAtoms({ graph, absorbed }: NeutralForm, { acid, base }: BestRu
     .filter(({ index, element, hydrogens, charge }) => {
       if (absorbed.has(index) || acid.has(index) || base.has(index)) return false;
       if (PROTIC.has(element) && 0 < hydrogens) return true;
-      return element === 'N' && charge === 0;
+      return element === 'N' && charge === 0 && hasFreePair(graph, index);
     })
     .map(({ index }) => index);
+}
+
+/** A lone pair that no neighbour draws away: pyridine-like, or an amine on saturated carbon only. */
+function hasFreePair({ atoms, bonds }: Graph, atom: number): boolean {
+  const { aromatic, neighbours, bonds: around } = atoms[atom]!;
+  if (aromatic) return neighbours.length === 2;
+  if (around.some((bond) => bonds[bond]!.order !== 1)) return false;
+  return neighbours.every(
+    (other) =>
+      atoms[other]!.element === 'C' &&
+      atoms[other]!.bonds.every((bond) => bonds[bond]!.order === 1 && !bonds[bond]!.aromatic),
+  );
 }
