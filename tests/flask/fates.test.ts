@@ -2,7 +2,13 @@
 import fc from 'fast-check';
 import { expect, test } from 'vitest';
 import { coupledSteps } from '../../server/src/flask/carbon-sites.ts';
-import { firstSites, reagentFates, siteOrder, solventFate } from '../../server/src/flask/fates.ts';
+import {
+  firstSites,
+  lostToSolvent,
+  reagentFates,
+  siteOrder,
+  solventFate,
+} from '../../server/src/flask/fates.ts';
 import { judgeTransfer } from '../../server/src/flask/judge.ts';
 import { rateOf } from '../../server/src/flask/kinetics.ts';
 import { ledgerOf } from '../../server/src/flask/ledger.ts';
@@ -59,6 +65,56 @@ test('a solvent without a constant of its own answers for its structure, unless 
   };
   expect(inSolvent('ketone-ch', 26.5)[0]).toMatchObject({ as: 'base', bySolvent: true });
   expect(inSolvent('ether-ch', 30)).toEqual([]);
+});
+
+test('LDA meets acetonitrile before the ketone that would take its proton in the end', () => {
+  const contents = flask([[MECN, 1]], [lda, { name: 'ketone', molecule: stock.ketone(), mol: 0.2 }]);
+  expect(lostToSolvent(contents, tables, constantsIn)[0]).toMatchObject({ ingredient: 1, bySolvent: true });
+  expect(lostToSolvent(flask([[THF, 1]], [lda]), tables, constantsIn)).toEqual([]);
+});
+
+test('a catalytic base acts, the solvent does not step in for it', () => {
+  const contents = flask(
+    [[WATER, 1]],
+    [
+      { name: 'phenol', molecule: stock.phenol(), mol: 0.2 },
+      { name: 'Et3N', molecule: stock.Et3N(), mol: 0.004 },
+    ],
+  );
+  const verdict = judgeTransfer(
+    contents,
+    { ingredient: 1, couples: [], direction: 'deprotonate' },
+    tables,
+    constantsIn,
+  )!;
+  expect(verdict.partner!.ingredient).toBe(2);
+});
+
+test('what no correlation reaches is taken over from water, and an aprotic flask goes to the DMSO scale', () => {
+  const strong = molecule([{ group: 'hydrogen-chloride', family: 'mineral-acid', element: 'Cl', water: -6 }]);
+  const inEthanol = solveFlask(
+    flask([[ETHANOL, 1]], [{ name: 'HCl', molecule: strong, mol: 0.1 }]),
+    tables,
+    constantsIn,
+  );
+  const chloride = inEthanol.couples.find(({ ingredient }) => ingredient === 1)!;
+  expect(chloride.protonated).toBeLessThan(0.1);
+  expect(chloride.constant).toMatchObject({ origin: 'carried', scale: 'EtOH' });
+  const onlyDmso = { ...MECN, scale: 'MeCN' };
+  const known: typeof constantsIn = (one, scale, all) =>
+    constantsIn(one, scale === 'MeCN' ? 'nowhere' : scale, all);
+  const silent: typeof constantsIn = (one, scale, all) => {
+    const answer = known(one, scale, all);
+    return scale === 'MeCN'
+      ? { couples: answer.couples.map(() => null), steps: answer.steps.map(() => []) }
+      : answer;
+  };
+  const state = solveFlask(
+    flask([[onlyDmso, 1]], [{ name: 'ketone', molecule: stock.ketone(), mol: 0.1 }]),
+    tables,
+    silent,
+  );
+  expect(state.medium).toMatchObject({ scale: 'DMSO', scaleSd: 1.5 });
 });
 
 test('LDA in THF and butyllithium in toluene keep', () => {

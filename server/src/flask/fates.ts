@@ -115,6 +115,22 @@ export function fatesOf(solved: Solved): ReagentFate[] {
   return fates.sort((a, b) => b.share - a.share || a.ingredient - b.ingredient);
 }
 
+/**
+ * What the solvent does to hydrides, metal amides and organometallics before they find anything else.
+ *
+ * The solvent is there in great excess and meets them first; where the proton ends up in the end is another question.
+ */
+export function lostToSolvent(
+  contents: Contents,
+  tables: Tables,
+  constantsIn: ConstantsIn = constantsOf,
+): ReagentFate[] {
+  const alone = contents.ingredients.filter((one) => one.role === 'solvent' || isForGood(one));
+  return reagentFates({ ...contents, ingredients: alone }, tables, constantsIn).filter(
+    ({ as, bySolvent }) => as === 'base' && bySolvent,
+  );
+}
+
 /** What becomes of the solvent itself. */
 export function solventFate(
   contents: Contents,

@@ -19,11 +19,12 @@ import { hasPhaseTransfer } from './allowances/phase-transfer.ts';
 import { HIGHEST_PH, LOWEST_PH, solveBalance, stepShares } from './balance.ts';
 import { constantInWater } from './ion-pairing.ts';
 import { rateOf } from './kinetics.ts';
-import { isSolidBase, mediumOf } from './medium.ts';
+import { isSolidBase } from './medium.ts';
 import { normalBelow } from './numbers.ts';
 import { broughtBy, candidatesIn, capacityOf, isLevelled, partnerOf } from './partner.ts';
 import { type Direction, type Placed, placeSite } from './placing.ts';
 import { heldInSalt } from './salts.ts';
+import { mediumFor, stepsIn } from './scale-choice.ts';
 import { chargedShare, type Solved } from './solve.ts';
 import type { Allowance, ConstantsIn, Contents, Ingredient, Site, Verdict } from './state.ts';
 import type { FlaskSystem } from './system.ts';
@@ -91,22 +92,35 @@ function chooseCouple(
   tables: Tables,
   constantsIn: ConstantsIn,
 ): Couple | null {
-  const { scale } = mediumOf(contents);
-  const { couples: known, steps } = constantsIn(molecule!, scale, tables, own ? { own } : {});
+  const medium = mediumFor(contents, tables, constantsIn);
+  const steps = stepsIn(molecule!, own, medium, tables, constantsIn);
   const holds = heldCouples(molecule!, steps);
   const loses = direction === 'deprotonate';
   let best: { couple: Couple; value: number } | null = null;
   const candidates = couples.length === 0 ? molecule!.couples.map((_, place) => place) : couples;
   for (const place of candidates) {
     const couple = molecule!.couples[place];
-    const constant = known[place];
-    if (couple === undefined || constant == null) continue;
+    const constant = couple === undefined ? null : constantOf(couple, steps, loses);
+    if (couple === undefined || constant === null) continue;
     // Unless a site is named, only one that can still move is meant.
     if (couples.length === 0 && holds(couple) !== loses) continue;
     const isEasier = best === null || (loses ? constant.value < best.value : best.value < constant.value);
     if (isEasier) best = { couple, value: constant.value };
   }
   return (best as { couple: Couple } | null)?.couple ?? null;
+}
+
+/** The step of a couple that moves first; null where none reaches it. */
+function constantOf(
+  couple: Couple,
+  steps: readonly (readonly ProtonStep[])[],
+  loses: boolean,
+): Constant | null {
+  const own = (steps[couple.component] ?? [])
+    .filter((step) => step.couple.kind === couple.kind && step.couple.atom === couple.atom)
+    .map(({ constant }) => constant)
+    .sort((a, b) => a.value - b.value);
+  return (loses ? own[0] : own.at(-1)) ?? null;
 }
 
 /** Which couples hold a proton once acids and bases of the same salt have met. */

@@ -7,10 +7,13 @@
  */
 import { ledgerOf } from './ledger.ts';
 import type { Placed } from './placing.ts';
+import { chargedShare } from './solve.ts';
 import type { Site } from './state.ts';
 
 /** Share of the site's amount from which a base counts as the one that acts. */
 const ACTING_SHARE = 0.05;
+/** The same for one that was charged as such; less forms by itself in any salt. */
+const CATALYTIC_SHARE = 1e-3;
 /** Bases this much weaker than the acting one do not count as capacity. */
 const CAPACITY_SPAN = 4;
 /** mol/L of a solvent's own ion that cannot come from its autoprotolysis. */
@@ -20,19 +23,23 @@ const LEVELLED_MOLAR = 1e-3;
 export interface Candidate {
   readonly site: Site;
   readonly able: number;
+  /** mol that it could take (give) as charged. */
+  readonly charged: number;
   readonly isSolvent: boolean;
 }
 
 /** Every other couple that can take (give) the proton, as it stands before the site takes part. */
 export function candidatesIn({ rest }: Placed, loses: boolean): Candidate[] {
   const { system, shares } = rest;
-  return system.acids.flatMap(({ ingredient, steps, amount, isSolvent }, place) =>
-    steps.map(({ couple, constant }, step) => {
+  return system.acids.flatMap((acid, place) =>
+    acid.steps.map(({ couple, constant }, step) => {
       const held = shares[place]![step]!;
+      const charged = chargedShare(acid, step);
       return {
-        site: { ingredient, couple, constant },
-        able: amount * (loses ? 1 - held : held),
-        isSolvent,
+        site: { ingredient: acid.ingredient, couple, constant },
+        able: acid.amount * (loses ? 1 - held : held),
+        charged: acid.amount * (loses ? 1 - charged : charged),
+        isSolvent: acid.isSolvent,
       };
     }),
   );
@@ -43,7 +50,10 @@ export function partnerOf(candidates: readonly Candidate[], amount: number, lose
   const byStrength = [...candidates].sort((a, b) =>
     loses ? b.site.constant.value - a.site.constant.value : a.site.constant.value - b.site.constant.value,
   );
-  const acting = byStrength.find(({ able }) => ACTING_SHARE * amount <= able);
+  const acting = byStrength.find(
+    ({ able, charged, isSolvent }) =>
+      (isSolvent || charged === 0 ? ACTING_SHARE : CATALYTIC_SHARE) * amount <= able,
+  );
   if (acting !== undefined) return acting.site;
   const strength = ({ able, site }: Candidate) =>
     Math.log10(Math.max(able, Number.MIN_VALUE)) + (loses ? site.constant.value : -site.constant.value);

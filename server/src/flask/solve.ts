@@ -13,7 +13,7 @@ import type { Tables } from '../tables/tables.ts';
 import { activityVariance, mixedConstants } from './activity.ts';
 import { formShares, HIGHEST_PH, LOWEST_PH, type Polyprotic, solveBalance, stepShares } from './balance.ts';
 import { isCalled } from './kinetics.ts';
-import { mediumOf } from './medium.ts';
+import { mediumFor } from './scale-choice.ts';
 import type { ConstantsIn, Contents, CoupleState, FlaskState, Ingredient, Medium } from './state.ts';
 import { type FlaskAcid, type FlaskSystem, type Participation, systemOf } from './system.ts';
 
@@ -59,7 +59,7 @@ export function solveContents(
   constantsIn: ConstantsIn,
   participation: Participation = {},
 ): Solved {
-  const medium = mediumOf(contents);
+  const medium = mediumFor(contents, tables, constantsIn);
   const solve = (how: Participation) =>
     solveSystem(contents, medium, systemOf(contents, medium, tables, constantsIn, how));
   const adders = contents.ingredients.filter((one) => addsToCarbonyls(one, tables));

@@ -18,6 +18,7 @@ import { rateOf } from './kinetics.ts';
 import { isSolidBase, isWater, usable } from './medium.ts';
 import { hydrideAcid, surfaceAcid } from './practical-bases.ts';
 import { heldInSalt } from './salts.ts';
+import { stepsIn } from './scale-choice.ts';
 import type { ConstantsIn, Contents, Ingredient, Medium, Site } from './state.ts';
 import { atTemperature } from './temperature.ts';
 import { pKwOfLiquid } from './water-constant.ts';
@@ -61,6 +62,8 @@ export interface Participation {
 const SPARED_FROM = 20;
 /** A carbon acid that does give its proton to an organometallic before anything else. */
 const EATING_FAMILIES = new Set(['alkyne', 'hydrogen-cyanide']);
+/** Solvents to which an organometallic or a hydride adds. */
+const CARBONYL_SOLVENTS = new Set(['ester', 'amide', 'carbonate', 'urea']);
 const HOT_WATER = 100;
 const ZERO_CELSIUS = 273.15;
 
@@ -157,6 +160,7 @@ function solventStep(one: Ingredient, kind: Couple['kind'], build: Build): Proto
   const { medium, pKw } = build;
   const row = medium.solvent!;
   const alive = aliveCouples(one.molecule, kind, build);
+  if (kind === 'acid' && build.participation.sparingCarbonyls && CARBONYL_SOLVENTS.has(row.kind)) return null;
   // Its protons are known, and none of them moves.
   if (alive.length === 0 && (one.molecule?.couples.length ?? 0) !== 0) return null;
   const value = ownValue(row, kind, medium, pKw);
@@ -228,7 +232,7 @@ function ingredientAcids(one: Ingredient, build: Build): { acids: FlaskAcid[]; c
   if (isSolidBase(one) && !medium.protic && medium.organic === null) {
     return { acids: surfaceAcid(one, amount, medium), charges: 0 };
   }
-  const { steps } = constantsIn(one.molecule, medium.scale, tables, one.own ? { own: one.own } : {});
+  const steps = stepsIn(one.molecule, one.own, medium, tables, constantsIn);
   const acids: FlaskAcid[] = [];
   let charges = 0;
   const meant = build.participation.intended?.find(({ ingredient }) => ingredient === one.id)?.couple ?? null;
