@@ -1,5 +1,11 @@
 import { beforeAll, expect, test } from 'vitest';
-import { massOf, numberOf, symbolOf, valencesOf } from '../../server/src/chemistry/elements.ts';
+import {
+  massOf,
+  numberOf,
+  outerElectronsOf,
+  symbolOf,
+  valencesOf,
+} from '../../server/src/chemistry/elements.ts';
 import { loadRDKit, type RDKit, readByRDKit } from './rdkit.ts';
 
 let rdkit: RDKit;
@@ -35,4 +41,26 @@ test('masses are the average ones and missing where there is none', () => {
   expect(massOf('Br')).toBe(79.904);
   expect(massOf('I')).toBe(126.9);
   expect(massOf('Og')).toBeNaN();
+});
+
+test.each([
+  ['H', 1],
+  ['C', 4],
+  ['O', 6],
+  ['P', 5],
+  ['K', 1],
+  ['Fe', 8],
+  ['Zn', 12],
+  ['Ge', 4],
+  ['Br', 7],
+  ['Pd', 10],
+  ['Sn', 4],
+  ['I', 7],
+  ['Ba', 2],
+  ['La', 3],
+  ['Pt', 10],
+  ['Hg', 12],
+  ['Pb', 4],
+])('%s has %i outer electrons', (element, count) => {
+  expect(outerElectronsOf(element)).toBe(count);
 });

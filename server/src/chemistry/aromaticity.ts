@@ -6,7 +6,7 @@
  *   (tests/chemistry/build-graph.test.ts compares with RDKit)
  * Sources: Hückel's rule; which atoms may take part follows the rules that RDKit documents for its default model.
  */
-import { numberOf, symbolOf, valencesOf } from './elements.ts';
+import { numberOf, outerElectronsOf, symbolOf, valencesOf } from './elements.ts';
 
 export interface KekuleAtom {
   readonly element: string;
@@ -30,35 +30,8 @@ const LARGEST_FUSED_RING = 24;
 /** Oxygen and sulfur lend their lone pair only where they also lie in a ring up to this size. */
 const LARGEST_CHALCOGEN_RING = 8;
 
-/** Electronegativity by Pauling, only for the elements that rings hold and what they bear. */
-const ELECTRONEGATIVITY: Readonly<Record<string, number>> = {
-  B: 2.04,
-  C: 2.55,
-  N: 3.04,
-  O: 3.44,
-  F: 3.98,
-  Si: 1.9,
-  P: 2.19,
-  S: 2.58,
-  Cl: 3.16,
-  As: 2.18,
-  Se: 2.55,
-  Te: 2.1,
-  Br: 2.96,
-  I: 2.66,
-};
-const OUTER: Readonly<Record<string, number>> = {
-  B: 3,
-  C: 4,
-  N: 5,
-  O: 6,
-  Si: 4,
-  P: 5,
-  S: 6,
-  Se: 6,
-  Te: 6,
-  Al: 3,
-};
+/** Elements that may be members of an aromatic ring. */
+const MEMBERS = new Set(['B', 'C', 'N', 'O', 'Si', 'P', 'S', 'Se', 'Te']);
 
 export interface Aromatic {
   readonly atoms: readonly boolean[];
@@ -166,9 +139,8 @@ function electronsGiven(
   incident: readonly (readonly number[])[],
 ): number | null {
   const { element, charge, hydrogens, unpaired } = atoms[atom]!;
-  const outer = OUTER[element];
   const usual = valencesOf(element, 0)?.[0];
-  if (outer === undefined || usual === undefined || usual <= 1) return null;
+  if (usual === undefined || !MEMBERS.has(element)) return null;
   if (0 < unpaired && (element !== 'C' || charge !== 0)) return null;
   const around = incident[atom]!.map((bond) => bonds[bond]!);
   const degree = around.length + hydrogens;
@@ -178,7 +150,7 @@ function electronsGiven(
   if (limit === undefined || limit < total) return null;
   const multiple = around.filter(({ order }) => 1 < order);
   if (1 < multiple.length) return null;
-  const lonePairs = Math.max(outer - usual - charge, 0);
+  const lonePairs = Math.max(outerElectronsOf(element) - usual - charge, 0);
   let available = usual - degree + lonePairs - unpaired;
   if (1 < available && 1 < total - degree) available = 1;
   if (available < 0) return null;
@@ -198,8 +170,10 @@ function electronsGiven(
   return available % 2 === 1 ? 1 : 2;
 }
 
+/** Whether a doubly bound neighbour outside the ring keeps the electrons: it has more outer electrons, or is smaller. */
 function stealsFrom(element: string, other: string): boolean {
-  return (ELECTRONEGATIVITY[element] ?? 0) < (ELECTRONEGATIVITY[other] ?? 0);
+  const [own, theirs] = [outerElectronsOf(element), outerElectronsOf(other)];
+  return own < theirs || (own === theirs && numberOf(other) < numberOf(element));
 }
 
 function bondsOfRing(

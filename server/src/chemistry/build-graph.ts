@@ -82,7 +82,8 @@ function separateCharges(draft: Draft): void {
     if (aromatic ? sum !== 4 : sum !== 5) return;
     const bond = adjacency.edges[atom]!.find((candidate, place) => {
       const other = adjacency.neighbours[atom]![place]!;
-      const single = adjacency.neighbours[other]!.length === 1 && charges[other] === 0;
+      const around = adjacency.neighbours[other]!.filter((each) => !isMetal(structure.atoms[each]!.element));
+      const single = around.length === 1 && charges[other] === 0;
       const { element: partner } = structure.atoms[other]!;
       return (
         single &&
@@ -148,7 +149,7 @@ function placeDoubleBonds(draft: Draft): GraphProblem | null {
   );
   const partner = largestMatching(neighbours);
   const left = order.find((_, place) => partner[place] === -1);
-  if (left !== undefined) return notKekule(structure, left);
+  if (left !== undefined) return notKekule(draft, left);
   structure.bonds.forEach(({ from, to }, bond) => {
     if (orders[bond] !== OPEN) return;
     const [a, b] = [places.get(from), places.get(to)];
@@ -157,15 +158,20 @@ function placeDoubleBonds(draft: Draft): GraphProblem | null {
   return null;
 }
 
-function notKekule({ atoms }: Structure, atom: number): GraphProblem {
-  const { span, element } = atoms[atom]!;
-  const advice = atoms.some(({ aromatic, element: other }) => aromatic && other === 'N')
+/** The problem underlines the smallest ring through the atom that is left without a double bond. */
+function notKekule({ structure, adjacency, inRing }: Draft, atom: number): GraphProblem {
+  const { atoms, bonds } = structure;
+  const ring = smallestRings(atoms.length, bonds, adjacency, inRing)
+    .filter((members) => members.includes(atom))
+    .sort((a, b) => a.length - b.length)[0] ?? [atom];
+  const span = {
+    start: Math.min(...ring.map((member) => atoms[member]!.span.start)),
+    end: Math.max(...ring.map((member) => atoms[member]!.span.end)),
+  };
+  const advice = ring.some((member) => atoms[member]!.element === 'N')
     ? 'an aromatic nitrogen that carries a hydrogen is written [nH]'
-    : 'check which atoms of the ring are aromatic';
-  return unreadable(
-    span,
-    `Double bonds cannot be placed around this aromatic ${element.toLowerCase()}: ${advice}.`,
-  );
+    : 'check which of its atoms are aromatic';
+  return unreadable(span, `Double bonds cannot be placed around this aromatic ring: ${advice}.`);
 }
 
 /** Adds implied hydrogens and finds atoms with more bonds than they can have. */
@@ -195,7 +201,7 @@ function bondsThatCount(draft: Draft, atom: number, valences: readonly number[] 
   const { structure, adjacency, orders, hydrogens } = draft;
   const sum = orderSum(draft, atom);
   const most = valences?.[valences.length - 1] ?? Number.POSITIVE_INFINITY;
-  if (sum + hydrogens[atom]! <= most || !DONORS.has(structure.atoms[atom]!.element)) return sum;
+  if (most === 0 || sum + hydrogens[atom]! <= most || !DONORS.has(structure.atoms[atom]!.element)) return sum;
   const dative = adjacency.edges[atom]!.find(
     (bond, place) =>
       orders[bond] === 1 && isMetal(structure.atoms[adjacency.neighbours[atom]![place]!]!.element),

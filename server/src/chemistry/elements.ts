@@ -86,6 +86,16 @@ export function isMetal(element: string): boolean {
   return !NON_METALS.has(element);
 }
 
+/** Electrons beyond the closed shells: the number of the group up to 12, and of the group less ten from there on. */
+export function outerElectronsOf(element: string): number {
+  const number = numberOf(element);
+  const core = [86, 54, 36, 18, 10, 2].find((closed) => closed < number) ?? 0;
+  const filled = core < 54 ? 0 : 14;
+  const beyond = number - core;
+  const group = filled < beyond - 3 ? beyond - filled : beyond;
+  return core < 18 || group <= 12 ? group : group - 10;
+}
+
 /** Average mass in g/mol; NaN for elements without a usual one. */
 export function massOf(element: string): number {
   return MASSES[numberOf(element) - 1] ?? Number.NaN;
