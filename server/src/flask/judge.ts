@@ -209,7 +209,7 @@ function weigh(
   if (net !== null) {
     allowances.push('net-reaction');
     answer = 'yes';
-  } else if (loses && answer !== 'yes' && intent.isConsumed && STEADY_FROM <= pair.logK) {
+  } else if (loses && answer !== 'yes' && intent.isConsumed && STEADY_FROM <= pair.logK + pair.sd) {
     allowances.push('steady-amount');
     answer = 'yes';
   }

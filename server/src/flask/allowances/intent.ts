@@ -7,7 +7,7 @@
  */
 import type { Constant, Couple } from '../../chemistry/couple.ts';
 
-/** Below this log K not even a steady amount is enough; common practice. */
+/** Below this log K, its sd in its favour, not even a steady amount is enough; common practice. */
 export const STEADY_FROM = -8;
 
 /** The most acidic site of a product that a base takes for good; null where it has none more acidic than the base's acid. */
