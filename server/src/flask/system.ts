@@ -19,7 +19,7 @@ import { isSolidBase, isWater, usable } from './medium.ts';
 import { hydrideAcid, surfaceAcid } from './practical-bases.ts';
 import { heldInSalt } from './salts.ts';
 import { stepsIn } from './scale-choice.ts';
-import type { ConstantsIn, Contents, Ingredient, Medium, Site } from './state.ts';
+import type { ConstantsIn, Contents, Ingredient, Medium } from './state.ts';
 import { atTemperature } from './temperature.ts';
 import { pKwOfLiquid } from './water-constant.ts';
 
@@ -103,13 +103,6 @@ export function systemOf(
   });
   const paired = withIonPairs(withSolvent, contents, medium, tables, constantsIn);
   return { acids: paired, spectatorCharges, pKw };
-}
-
-/** All couples of the flask with the constants they have in it, as charged. */
-export function sitesOf(system: FlaskSystem): Site[] {
-  return system.acids.flatMap(({ ingredient, steps }) =>
-    steps.map(({ couple, constant }) => ({ ingredient, couple, constant })),
-  );
 }
 
 interface Build {
