@@ -13,6 +13,7 @@ import {
 } from 'vscode-languageclient';
 import { showExplanation } from './commands/show-explanation.ts';
 import { findPlans, readFile } from './files.ts';
+import { createFlaskView } from './flask-view/panel.ts';
 import { createStatus } from './status.ts';
 
 /** The server is given up on after this many ends within `ENDS_WITHIN`. */
@@ -48,14 +49,17 @@ export async function start(
     },
   });
   const status = createStatus();
+  const flaskView = createFlaskView(context, client);
   context.subscriptions.push(
     log,
     status,
+    flaskView,
     client.onDidChangeState(({ newState }) => status.show(newState)),
     client.onRequest('lyate/readFile', ({ uri }: { uri: string }) => readFile(uri)),
     client.onRequest('lyate/findPlans', ({ root }: { root: string }) => findPlans(root)),
     vscode.commands.registerCommand('lyate.showLog', () => log.show(true)),
     vscode.commands.registerCommand('lyate.showExplanation', showExplanation),
+    vscode.commands.registerCommand('lyate.openFlaskView', flaskView.open),
     vscode.commands.registerCommand('lyate.restartServer', async () => {
       ends.length = 0;
       if (client.state === State.Running) await client.stop();

@@ -20,6 +20,7 @@ import { FIX_ALL, registerCodeActions } from './requests/code-actions.ts';
 import { registerCompletion, registerSignatureHelp } from './requests/completion.ts';
 import { registerDefinition } from './requests/definition.ts';
 import { createDiagnostics, pulls } from './requests/diagnostics.ts';
+import { registerFlaskAt } from './requests/flask-at.ts';
 import { registerFormatting } from './requests/formatting.ts';
 import { registerHints, registerLenses } from './requests/hints-and-lenses.ts';
 import { registerHover } from './requests/hover.ts';
@@ -221,6 +222,7 @@ function start(
     registerCodeActions,
     registerFormatting,
     registerPages,
+    registerFlaskAt,
   ]) {
     register(session);
   }
