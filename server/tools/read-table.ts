@@ -37,19 +37,27 @@ export function readTable(file: string, schemaFile: string, sources: ReadonlySet
   const schema = JSON.parse(readFileSync(schemaFile, 'utf8')) as Schema;
   const name = basename(file);
   const faults: string[] = [];
-  const records = parse(readFileSync(file, 'utf8'), { info: true, bom: true, relax_column_count: true, skip_empty_lines: true }) as unknown as {
+  const records = parse(readFileSync(file, 'utf8'), {
+    info: true,
+    bom: true,
+    relax_column_count: true,
+    skip_empty_lines: true,
+  }) as unknown as {
     record: string[];
     info: { lines: number };
   }[];
   const header = records[0]?.record ?? [];
   const wanted = Object.keys(schema.columns);
   if (header.join() !== wanted.join()) {
-    throw new TableFault(`${name}:1: the columns are ${header.join(', ')}; they must be ${wanted.join(', ')}`);
+    throw new TableFault(
+      `${name}:1: the columns are ${header.join(', ')}; they must be ${wanted.join(', ')}`,
+    );
   }
   const seen = new Map<string, number>();
   const rows = records.slice(1).map(({ record, info }): Row => {
     const at = (column: string) => `${name}:${info.lines}: ${column}`;
-    if (record.length !== wanted.length) faults.push(`${name}:${info.lines}: ${record.length} cells where ${wanted.length} are expected`);
+    if (record.length !== wanted.length)
+      faults.push(`${name}:${info.lines}: ${record.length} cells where ${wanted.length} are expected`);
     const cells: Record<string, Cell> = {};
     wanted.forEach((column, place) => {
       const rule = schema.columns[column]!;
@@ -62,10 +70,11 @@ export function readTable(file: string, schemaFile: string, sources: ReadonlySet
         if (first !== undefined) faults.push(`${at(column)} "${text}" stands already on line ${first}`);
         seen.set(key, info.lines);
       }
-      cells[camel(column)] = valueOf(text, rule);
+      cells[camel(column)] = cellOf(text, rule);
       if (column === 'sources') {
         for (const source of text.split(';').map((key) => key.trim())) {
-          if (source !== '' && !sources.has(source)) faults.push(`${at(column)} "${source}" is not in sources.json`);
+          if (source !== '' && !sources.has(source))
+            faults.push(`${at(column)} "${source}" is not in sources.json`);
         }
       }
     });
@@ -106,7 +115,7 @@ function faultOf(text: string, { type, required, low, high, of }: Column): strin
   }
 }
 
-function valueOf(text: string, { type }: Column): Cell {
+function cellOf(text: string, { type }: Column): Cell {
   if (type === 'list' || type === 'choices') return split(text);
   if (type === 'flag') return text === 'yes';
   if (text === '') return type === 'text' ? '' : null;

@@ -22,6 +22,10 @@ for (const file of ['sound-1', 'sound-2', 'flawed']) {
 
 const open = readFixtures(readFileSync(new URL('./not-yet.md', import.meta.url), 'utf8'));
 test.each(open.map((fixture) => [fixture.title, fixture] as const))('not yet said: %s', (_, fixture) => {
-  const { findings } = analyseNow(analyser, { file: 'practice.lyate', text: fixture.plan, language: 'lyate' });
+  const { findings } = analyseNow(analyser, {
+    file: 'practice.lyate',
+    text: fixture.plan,
+    language: 'lyate',
+  });
   expect(differences(fixture, findings)).not.toEqual([]);
 });

@@ -15,7 +15,7 @@ export default defineCheck({
   sources: ['bordwell-1988'],
   inStep: (facts) =>
     reportKind(facts, 'other-site', ({ verdict, ahead }) => ({
-      message: `${ahead.map((site) => `The ${nameOf(facts, site)} (pKa ${unit(site)})`).join(' and ')} goes before the ${nameOf(facts, verdict.site)} (pKa ${unit(verdict.site)}), and the flask holds ${verdict.capacity.toFixed(2)} equiv for both.`,
+      message: `${ahead.map((site) => `The ${nameOf(facts, site)} (pKa ${unit(site)})`).join(' and ')} goes before the ${nameOf(facts, verdict.site)} (pKa ${unit(verdict.site)}): the amount does not cover both.`,
       severity: 'error',
     })),
 });

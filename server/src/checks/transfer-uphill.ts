@@ -1,7 +1,7 @@
 /** The intended proton transfer does not happen: less than a tenth of the site reacts. */
 
 import { defineCheck } from './define.ts';
-import { nameOf, percent, reportKind, severityOf, unit } from './verdicts.ts';
+import { nameOf, partnerName, percent, reportKind, severityOf, unit } from './verdicts.ts';
 
 export default defineCheck({
   name: 'transfer-uphill',
@@ -36,7 +36,7 @@ step A
       const message =
         partner === null
           ? `Nothing in this flask ${site.couple.holdsProton ? 'takes' : 'gives'} the proton: ${nameOf(facts, site)} (pKa ${unit(site)}) stays as it is.`
-          : `${nameOf(facts, partner)} (pKa ${partner.constant.value.toFixed(1)}) is ${Math.abs(logK).toFixed(1)} ± ${sd.toFixed(1)} units too ${verb} for the ${nameOf(facts, site)} (pKa ${unit(site)}): at these amounts ${percent(extent)} reacts.`;
+          : `${partnerName(facts, verdict)} (pKa ${partner.constant.value.toFixed(1)}) is ${Math.abs(logK).toFixed(1)} ± ${sd.toFixed(1)} units too ${verb} for the ${nameOf(facts, site)} (pKa ${unit(site)}): at these amounts ${percent(extent)} reacts.`;
       return { message, severity: severityOf(verdict, facts) };
     }),
 });

@@ -153,6 +153,14 @@ export function nameOf({ additions }: StepFacts, { ingredient, couple }: Site): 
     : `${couple.groupName} (conjugate acid) of ${owner}`;
 }
 
+/** What acts: "NaOH (conjugate acid: water)" or "2,6-lutidine (conjugate acid: pyridine)". */
+export function partnerName(facts: StepFacts, { partner, broughtBy }: Verdict): string {
+  if (partner === null) return 'nothing in the flask';
+  const owner = facts.additions.find(({ ingredient }) => ingredient.id === (broughtBy ?? partner.ingredient))
+    ?.ingredient.name;
+  return `${owner ?? 'the solvent'} (${partner.couple.kind === 'acid' ? 'conjugate acid' : 'site'}: ${partner.couple.groupName})`;
+}
+
 /** "0.05 %" with two figures, never 0 or 100 where it is neither. */
 export function percent(share: number): string {
   const value = 100 * share;

@@ -53,7 +53,8 @@ export function editDistance(a: string, b: string, limit: number): number {
     for (let j = 1; j <= b.length; j++) {
       const same = a[i - 1] === b[j - 1] ? 0 : 1;
       let best = Math.min(row[j - 1]! + 1, last[j]! + 1, last[j - 1]! + same);
-      if (1 < i && 1 < j && a[i - 1] === b[j - 2] && a[i - 2] === b[j - 1]) best = Math.min(best, before[j - 2]! + 1);
+      if (1 < i && 1 < j && a[i - 1] === b[j - 2] && a[i - 2] === b[j - 1])
+        best = Math.min(best, before[j - 2]! + 1);
       row.push(best);
     }
     if (limit < Math.min(...row)) return limit + 1;

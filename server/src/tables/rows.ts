@@ -312,3 +312,19 @@ export interface ScaleRow extends Sourced {
   readonly high: number | null;
   readonly note: string;
 }
+
+/** What one group on a carbon or nitrogen is worth to the acidity of its proton in DMSO. */
+export interface ActivationRow extends Sourced {
+  readonly centre: 'C' | 'N';
+  /** A name of `chemistry/activators.ts`, or one of the model's own figures in brackets. */
+  readonly name: string;
+  /** pKa units that add up. */
+  readonly field: number;
+  /** pKa units that run into saturation. */
+  readonly resonance: number;
+  /** The same for each unit of substituent constant on the group's arene. */
+  readonly sigma: number;
+  /** Molecules of the fit that carry the group. */
+  readonly n: number;
+  readonly note: string;
+}

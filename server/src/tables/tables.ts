@@ -6,8 +6,23 @@
  */
 import { foldName } from './names.ts';
 import type {
-  CautionRow, EnthalpyRow, GasRow, GroupRow, HeatRow, HydrideRow, KineticsRow, LimitRow, MeasuredRow, ReagentRow, ScaleRow, SolventRow, SourceRow,
-  SpreadRow, StabilityRow, SubstituentRow, TermRow,
+  CautionRow,
+  EnthalpyRow,
+  GasRow,
+  GroupRow,
+  HeatRow,
+  HydrideRow,
+  KineticsRow,
+  LimitRow,
+  MeasuredRow,
+  ReagentRow,
+  ScaleRow,
+  SolventRow,
+  SourceRow,
+  SpreadRow,
+  StabilityRow,
+  SubstituentRow,
+  TermRow,
 } from './rows.ts';
 
 interface Built {
@@ -88,4 +103,3 @@ export function readTables(json: unknown): Tables {
     sourceById: new Map(built.sources.map((row) => [row.id, row])),
   };
 }
-
