@@ -4,12 +4,11 @@ import { beforeAll, expect, test } from 'vitest';
 import { buildGraph, type GraphReading } from '../../server/src/chemistry/build-graph.ts';
 import { isMetal } from '../../server/src/chemistry/elements.ts';
 import type { Graph } from '../../server/src/chemistry/graph.ts';
-import type { Structure } from '../../server/src/chemistry/molecule.ts';
 import { adjacencyOf, ringEdges, smallestRings } from '../../server/src/chemistry/rings.ts';
 import { readSmiles } from '../../server/src/chemistry/smiles.ts';
 import { writeSmiles } from '../../server/src/chemistry/write-smiles.ts';
 import { loadRDKit, type RDKit, type ReadByRDKit, readByRDKit } from './rdkit.ts';
-import { changedStructures, STRUCTURES } from './structures.ts';
+import { changedStructures, grid, STRUCTURES } from './structures.ts';
 
 let rdkit: RDKit;
 beforeAll(async () => {
@@ -228,26 +227,6 @@ test('lists the smallest rings and the separate parts', () => {
   expect(sizes('CCO')).toEqual([]);
   expect(read('[Na+].CC([O-])=O.[Na+]')!.graph!.fragments).toEqual([[0], [1, 2, 3, 4], [5]]);
 });
-
-/** A grid of carbon atoms joined to their neighbours: as many four-membered rings as it has fields. */
-function grid(rows: number, columns: number): Structure {
-  const atoms = Array.from({ length: rows * columns }, (_, index) => ({
-    index,
-    element: 'C',
-    aromatic: false,
-    isotope: 0,
-    charge: 0,
-    writtenHydrogens: undefined,
-    mapNumber: 0,
-    span: { start: index, end: index + 1 },
-  }));
-  const bond = (from: number, to: number) => ({ from, to, symbol: undefined, span: { start: 0, end: 0 } });
-  const bonds = atoms.flatMap(({ index }) => [
-    ...((index + 1) % columns === 0 ? [] : [bond(index, index + 1)]),
-    ...(index + columns < atoms.length ? [bond(index, index + columns)] : []),
-  ]);
-  return { atoms, bonds };
-}
 
 test('a chain of 2,000 atoms, 500 linked aromatic rings and a cage of 500 rings take bounded time', () => {
   const start = performance.now();

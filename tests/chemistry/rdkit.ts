@@ -20,6 +20,7 @@ export async function loadRDKit(): Promise<RDKit> {
 }
 
 const AS_WRITTEN = JSON.stringify({ removeHs: false });
+const EVERY_MATCH = JSON.stringify({ maxMatches: 100_000 });
 
 /** What RDKit makes of a text after its sanitizer; null where it refuses. */
 export function readByRDKit(rdkit: RDKit, smiles: string): ReadByRDKit | null {
@@ -41,21 +42,25 @@ export function readByRDKit(rdkit: RDKit, smiles: string): ReadByRDKit | null {
   };
 }
 
-/** Atom sets that a SMARTS fits, each sorted, all sorted; null where RDKit refuses text or pattern. */
-export function matchByRDKit(rdkit: RDKit, smiles: string, smarts: string): string[] | null {
-  const molecule = moleculeOf(rdkit, smiles);
-  const pattern = rdkit.get_qmol(smarts);
-  const found =
-    molecule === null || pattern === null
-      ? null
-      : (JSON.parse(molecule.get_substruct_matches(pattern, JSON.stringify({ maxMatches: 100_000 }))) as {
-          atoms: number[];
-        }[]);
-  molecule?.delete();
-  pattern?.delete();
-  if (found === null) return null;
-  // Where nothing fits the answer is an empty object.
-  return (Array.isArray(found) ? found : []).map(({ atoms }) => atoms.sort((a, b) => a - b).join(' ')).sort();
+/**
+ * Asks RDKit where patterns fit in molecules, each read once.
+ *
+ * @returns for a SMARTS and a text the atom sets that fit, each sorted, all sorted; null where RDKit refuses either
+ */
+export function matcherOf(rdkit: RDKit): (smarts: string, smiles: string) => string[] | null {
+  const molecules = new Map<string, Molecule | null>();
+  const patterns = new Map<string, Molecule | null>();
+  return (smarts, smiles) => {
+    if (!molecules.has(smiles)) molecules.set(smiles, moleculeOf(rdkit, smiles));
+    if (!patterns.has(smarts)) patterns.set(smarts, rdkit.get_qmol(smarts));
+    const [molecule, pattern] = [molecules.get(smiles), patterns.get(smarts)];
+    if (!molecule || !pattern) return null;
+    const found = JSON.parse(molecule.get_substruct_matches(pattern, EVERY_MATCH)) as { atoms: number[] }[];
+    // Where nothing fits the answer is an empty object.
+    return (Array.isArray(found) ? found : [])
+      .map(({ atoms }) => atoms.sort((a, b) => a - b).join(' '))
+      .sort();
+  };
 }
 
 /** RDKit throws on a few texts, such as one with too many ring digits; that is a refusal too. */

@@ -1,6 +1,7 @@
 /**
  * Structures of every kind that the trade writes, and seeded changes of them, for comparisons with an independent reader.
  */
+import type { Structure } from '../../server/src/chemistry/molecule.ts';
 
 /** Sound and unsound texts; which is which is for the comparison to say. */
 export const STRUCTURES: readonly string[] = `
@@ -85,4 +86,24 @@ export function changedStructures(count: number, seed: number): string[] {
     }
     return text;
   });
+}
+
+/** A grid of carbon atoms joined to their neighbours: as many four-membered rings as it has fields. */
+export function grid(rows: number, columns: number): Structure {
+  const atoms = Array.from({ length: rows * columns }, (_, index) => ({
+    index,
+    element: 'C',
+    aromatic: false,
+    isotope: 0,
+    charge: 0,
+    writtenHydrogens: undefined,
+    mapNumber: 0,
+    span: { start: index, end: index + 1 },
+  }));
+  const bond = (from: number, to: number) => ({ from, to, symbol: undefined, span: { start: 0, end: 0 } });
+  const bonds = atoms.flatMap(({ index }) => [
+    ...((index + 1) % columns === 0 ? [] : [bond(index, index + 1)]),
+    ...(index + columns < atoms.length ? [bond(index, index + columns)] : []),
+  ]);
+  return { atoms, bonds };
 }

@@ -3,8 +3,8 @@
  *
  * Knows: graphs and patterns.  Must not know: what a pattern means.
  * Invariants:
- *  1. The atoms found equal RDKit's for every pattern of the tables.   (tests/chemistry/match.test.ts)
- *  2. Stops after a fixed amount of work per pattern; a cage cannot hang it.
+ *  1. The atoms found equal RDKit's for every rule of the tables.   (tests/chemistry/match.test.ts)
+ *  2. Stops after a fixed amount of work per pattern; a cage cannot hang it.   (same)
  */
 import type { Graph } from './graph.ts';
 import type { AtomQuery, BondQuery, Pattern } from './smarts.ts';
@@ -23,8 +23,14 @@ interface View {
   /** Atoms by atomic number. */
   readonly byNumber: ReadonlyMap<number, readonly number[]>;
   readonly all: readonly number[];
-  /** Answers of patterns inside patterns: 0 unknown, 1 yes, 2 no. */
-  readonly inner: Map<Compiled, Uint8Array>;
+  readonly inner: Map<Compiled, Inner>;
+}
+
+/** What is known about a pattern inside a pattern, and the work that is left for all atoms together. */
+interface Inner {
+  /** 0 unknown, 1 yes, 2 no. */
+  readonly known: Uint8Array;
+  readonly work: { left: number };
 }
 
 type AtomTest = (view: View, atom: number) => boolean;
@@ -252,14 +258,15 @@ function compileAtom(query: AtomQuery): AtomTest {
 }
 
 /** A pattern inside a pattern is asked once for each atom of a graph. */
-function compileInner(inner: Compiled): AtomTest {
+function compileInner(pattern: Compiled): AtomTest {
   return (view, atom) => {
-    let known = view.inner.get(inner);
-    if (known === undefined) {
-      known = new Uint8Array(view.all.length);
-      view.inner.set(inner, known);
+    let inner = view.inner.get(pattern);
+    if (inner === undefined) {
+      inner = { known: new Uint8Array(view.all.length), work: { left: WORK_LIMIT } };
+      view.inner.set(pattern, inner);
     }
-    if (known[atom] === 0) known[atom] = fits(view, inner, atom, { left: WORK_LIMIT }) ? 1 : 2;
+    const { known, work } = inner;
+    if (known[atom] === 0) known[atom] = fits(view, pattern, atom, work) ? 1 : 2;
     return known[atom] === 1;
   };
 }

@@ -86,27 +86,40 @@ class Reader {
     const branches: number[] = [];
     let previous = -1;
     let query: BondQuery | null = null;
+    const needsAtom = (what: string) => {
+      if (previous === -1) throw this.error(`${what} needs an atom before it`);
+    };
+    const endsBond = () => {
+      if (query !== null) throw this.error('a bond leads nowhere');
+    };
     while (this.place < this.text.length) {
       const sign = this.text[this.place]!;
       if (sign === '(') {
-        if (previous === -1) throw this.error('a branch needs an atom before it');
+        needsAtom('a branch');
+        endsBond();
         branches.push(previous);
         this.place += 1;
       } else if (sign === ')') {
         if (branches.length === 0) break;
+        endsBond();
         previous = branches.pop()!;
         this.place += 1;
       } else if (sign === '.') {
+        needsAtom('a dot');
+        endsBond();
         previous = -1;
         this.place += 1;
       } else if (BOND_SIGNS.has(sign)) {
+        needsAtom('a bond');
         query = this.bondQuery();
       } else if (/[0-9%]/.test(sign)) {
+        needsAtom('a ring number');
         const digit = this.ringDigit();
         const open = rings.get(digit);
         if (open === undefined) {
           rings.set(digit, { atom: previous, query });
         } else {
+          if (open.atom === previous) throw this.error('a ring bond joins an atom to itself');
           bonds.push({ from: open.atom, to: previous, query: query ?? open.query ?? ['usual'] });
           rings.delete(digit);
         }
@@ -118,9 +131,10 @@ class Reader {
         query = null;
       }
     }
+    endsBond();
     if (rings.size !== 0) throw this.error('a ring bond is left open');
     if (branches.length !== 0) throw this.error('a branch is left open');
-    if (atoms.length === 0) throw this.error('no atom');
+    if (previous === -1) throw this.error(atoms.length === 0 ? 'no atom' : 'a dot leads nowhere');
     return { atoms, bonds };
   }
 
@@ -136,7 +150,7 @@ class Reader {
   private atom(): AtomQuery {
     if (this.text[this.place] === '[') {
       this.place += 1;
-      const query = this.lowAnd();
+      const query = this.hydrogen() ?? this.lowAnd();
       if (this.text[this.place] === ':') this.mapNumber();
       if (this.text[this.place] !== ']') throw this.error('a bracket is left open');
       this.place += 1;
@@ -147,6 +161,19 @@ class Reader {
     if (found === null) throw this.error(`unexpected ${this.text[this.place]}`);
     this.place += found[0].length;
     return symbolQuery(found[0]);
+  }
+
+  /** H is the element only where it stands alone or with a charge; elsewhere it counts hydrogens. */
+  private hydrogen(): AtomQuery | null {
+    const match = /H([+-]\d?)?(?=[\]:])/y;
+    match.lastIndex = this.place;
+    const found = match.exec(this.text);
+    if (found === null) return null;
+    this.place += 1;
+    const sign = this.text[this.place];
+    if (sign !== '+' && sign !== '-') return ['number', 1];
+    this.place += 1;
+    return ['and', ['number', 1], ['charge', this.charge(sign)]];
   }
 
   private mapNumber(): void {
@@ -202,7 +229,8 @@ class Reader {
     }
     const symbol = this.elementSymbol();
     if (symbol !== null) return symbol;
-    const sign = text[this.place]!;
+    const sign = text[this.place];
+    if (sign === undefined) throw this.error('unexpected end');
     this.place += 1;
     switch (sign) {
       case '#':
@@ -247,20 +275,20 @@ class Reader {
     throw this.error('R with a number is not used here');
   }
 
-  /** Element symbols inside brackets; H counts as an element only where it stands alone. */
+  /** Element symbols inside brackets, hydrogen apart. */
   private elementSymbol(): AtomQuery | null {
     const { text, place } = this;
     if (text[place] === 'H') return null;
     const two = text.slice(place, place + 2);
     if (/^[A-Z][a-z]$/.test(two) && numberOf(two) !== 0) {
       this.place += 2;
-      return symbolQuery(two);
+      return twoLetterQuery(two);
     }
     if (two === 'se' || two === 'te' || two === 'as' || two === 'si') {
       this.place += 2;
       return symbolQuery(two);
     }
-    const one = text[place]!;
+    const one = text[place] ?? '';
     if (/[BCNOPSFIKVWUY]/.test(one) || /[bcnops]/.test(one)) {
       this.place += 1;
       return symbolQuery(one);
@@ -352,6 +380,11 @@ function bondSign(sign: string): BondQuery {
     default:
       return ['order', 1];
   }
+}
+
+/** Symbols of two letters say nothing about aromaticity, except chlorine and bromine, which are never aromatic. */
+function twoLetterQuery(symbol: string): AtomQuery {
+  return symbol === 'Cl' || symbol === 'Br' ? symbolQuery(symbol) : ['number', numberOf(symbol)];
 }
 
 function symbolQuery(symbol: string): AtomQuery {
