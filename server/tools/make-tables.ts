@@ -12,10 +12,25 @@ import { parseSmarts } from '../src/chemistry/smarts.ts';
 import { readSmiles } from '../src/chemistry/smiles.ts';
 import { canonicalKey, molarMass, symmetryClasses } from '../src/chemistry/toolkit.ts';
 import { foldName } from '../src/tables/names.ts';
-import { type Cell, type Row, TableFault, readTable } from './read-table.ts';
+import { type Cell, type Row, readTable, TableFault } from './read-table.ts';
 
 const TABLES = [
-  'groups', 'substituents', 'terms', 'spreads', 'measured', 'scales', 'solvents', 'reagents', 'cautions', 'limits', 'stability', 'kinetics', 'heats', 'enthalpies', 'gases', 'hydrides',
+  'groups',
+  'substituents',
+  'terms',
+  'spreads',
+  'measured',
+  'scales',
+  'solvents',
+  'reagents',
+  'cautions',
+  'limits',
+  'stability',
+  'kinetics',
+  'heats',
+  'enthalpies',
+  'gases',
+  'hydrides',
 ] as const;
 
 interface SourceEntry {
@@ -36,8 +51,13 @@ function write(root: string): void {
   const keys = new Set(sources.map(({ id }) => id));
   const tables: Record<string, unknown> = { sources };
   for (const name of TABLES) {
-    if (!existsSync(at(`${name}.csv`))) { tables[name] = []; continue; }
-    tables[name] = readTable(at(`${name}.csv`), at('schema', `${name}.json`), keys).map((row) => complete(name, row));
+    if (!existsSync(at(`${name}.csv`))) {
+      tables[name] = [];
+      continue;
+    }
+    tables[name] = readTable(at(`${name}.csv`), at('schema', `${name}.json`), keys).map((row) =>
+      complete(name, row),
+    );
   }
   refuseSharedNames(tables as { solvents: Named[]; reagents: Named[] });
   const text = JSON.stringify(tables);
@@ -77,7 +97,9 @@ function identity(smiles: Cell): { key: string | null; mass: number | null } {
 /** Key of the neutral molecule of a measured row and the symmetry classes of its mapped atoms. */
 function measuredSite(smiles: string): { key: string; atoms: readonly number[]; classes: readonly number[] } {
   const neutral = neutralForm(graphOf(smiles));
-  const fragment = neutral.graph.fragments.find((atoms) => !atoms.every((atom) => neutral.absorbed.has(atom)))!;
+  const fragment = neutral.graph.fragments.find(
+    (atoms) => !atoms.every((atom) => neutral.absorbed.has(atom)),
+  )!;
   const classes = symmetryClasses(neutral.graph, fragment);
   const atoms = neutral.graph.atoms.filter(({ mapNumber }) => mapNumber === 1).map(({ index }) => index);
   if (atoms.length === 0) throw new Error(`${smiles} marks no site with :1`);
@@ -116,12 +138,16 @@ interface Named {
 /** Two names that fold together must mean one substance, or a reader could not tell which is meant. */
 function refuseSharedNames({ solvents, reagents }: { solvents: Named[]; reagents: Named[] }): void {
   const faults: string[] = [];
-  for (const [table, rows] of [['solvents', solvents], ['reagents', reagents]] as const) {
+  for (const [table, rows] of [
+    ['solvents', solvents],
+    ['reagents', reagents],
+  ] as const) {
     const seen = new Map<string, string>();
     for (const { name, synonyms } of rows) {
       for (const word of new Set([name, ...synonyms].map(foldName))) {
         const other = seen.get(word);
-        if (other !== undefined && other !== name) faults.push(`${table}.csv: "${word}" is a name of ${other} and of ${name}`);
+        if (other !== undefined && other !== name)
+          faults.push(`${table}.csv: "${word}" is a name of ${other} and of ${name}`);
         seen.set(word, name);
       }
     }
