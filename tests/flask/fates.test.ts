@@ -19,6 +19,7 @@ import {
   constantsIn,
   DCM,
   DMF,
+  DMSO,
   ETHANOL,
   flask,
   MECN,
@@ -88,6 +89,28 @@ test('a catalytic base acts, the solvent does not step in for it', () => {
     constantsIn,
   )!;
   expect(verdict.partner!.ingredient).toBe(2);
+});
+
+test('a little of a base that the solvent levels acts through the solvent’s ion', () => {
+  const strong = molecule(
+    [{ group: 'some-base', family: 'alkoxide', element: 'O', dmso: 37, held: false }],
+    [-1, 1],
+  );
+  const contents = flask(
+    [[DMSO, 1]],
+    [
+      { name: 'phenol', molecule: stock.phenol(), mol: 0.6 },
+      { name: 'base', molecule: strong, mol: 0.01 },
+    ],
+  );
+  const verdict = judgeTransfer(
+    contents,
+    { ingredient: 1, couples: [], direction: 'deprotonate' },
+    tables,
+    constantsIn,
+  )!;
+  expect(verdict.partner!.constant.value).toBe(35.1);
+  expect(verdict).toMatchObject({ answer: 'yes', broughtBy: 2 });
 });
 
 test('what no correlation reaches is taken over from water, and an aprotic flask goes to the DMSO scale', () => {

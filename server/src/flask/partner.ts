@@ -50,10 +50,22 @@ export function partnerOf(candidates: readonly Candidate[], amount: number, lose
   const byStrength = [...candidates].sort((a, b) =>
     loses ? b.site.constant.value - a.site.constant.value : a.site.constant.value - b.site.constant.value,
   );
-  const acting = byStrength.find(
-    ({ able, charged, isSolvent }) =>
-      (isSolvent || charged === 0 ? ACTING_SHARE : CATALYTIC_SHARE) * amount <= able,
+  const strongerThan = (a: Site, b: Site) =>
+    loses ? b.constant.value < a.constant.value : a.constant.value < b.constant.value;
+  const solvent = byStrength.find(
+    ({ isSolvent, site }) => isSolvent && site.couple.kind === (loses ? 'base' : 'acid'),
   );
+  // The solvent itself takes (gives) a proton only where nothing stronger is dissolved in it.
+  const dissolved = byStrength.filter(
+    (one) => one !== solvent && (solvent === undefined || strongerThan(one.site, solvent.site)),
+  );
+  const acting =
+    dissolved.find(
+      ({ able, charged, isSolvent }) =>
+        (isSolvent || charged === 0 ? ACTING_SHARE : CATALYTIC_SHARE) * amount <= able,
+    ) ??
+    dissolved.find(({ able }) => CATALYTIC_SHARE * amount <= able) ??
+    byStrength.find(({ able }) => ACTING_SHARE * amount <= able);
   if (acting !== undefined) return acting.site;
   const strength = ({ able, site }: Candidate) =>
     Math.log10(Math.max(able, Number.MIN_VALUE)) + (loses ? site.constant.value : -site.constant.value);
