@@ -74,7 +74,6 @@ function complete(table: string, { line, cells }: Row): Record<string, unknown> 
     if (table === 'solvents' || table === 'reagents') Object.assign(row, identity(cells.smiles ?? null));
     if (table === 'reagents' && cells.molarMass === null) row.molarMass = row.mass;
     if (table === 'measured') Object.assign(row, measuredSite(String(cells.smiles)));
-    if (table === 'cautions') row.patterns = patternsIn(cells);
   } catch (error) {
     throw new TableFault(`${table}.csv:${line}: ${(error as Error).message}`);
   }
@@ -108,17 +107,6 @@ function measuredSite(smiles: string): { key: string; atoms: readonly number[]; 
     atoms,
     classes: [...new Set(atoms.map((atom) => classes.get(atom) ?? -1))],
   };
-}
-
-function patternsIn(cells: Readonly<Record<string, Cell>>): Record<string, unknown> {
-  const patterns: Record<string, unknown> = {};
-  for (const cell of [cells.first, cells.second]) {
-    if (typeof cell !== 'string') continue;
-    for (const part of cell.split(' | ')) {
-      if (part.startsWith('group:')) patterns[part] = parseSmarts(part.slice(6));
-    }
-  }
-  return patterns;
 }
 
 function graphOf(smiles: string) {

@@ -22,10 +22,12 @@ import notAnAcid from './not-an-acid.ts';
 import otherSiteFirst from './other-site-first.ts';
 import pHOutOfReach from './pH-out-of-reach.ts';
 import reagentEatenByProton from './reagent-eaten-by-proton.ts';
+import runawayPair from './runaway-pair.ts';
 import siteNotFound from './site-not-found.ts';
 import solventAttacked from './solvent-attacked.ts';
 import solventLosesProton from './solvent-loses-proton.ts';
 import solventOutOfRange from './solvent-out-of-range.ts';
+import toxicGas from './toxic-gas.ts';
 import transferPartial from './transfer-partial.ts';
 import transferSlow from './transfer-slow.ts';
 import transferUphill from './transfer-uphill.ts';
@@ -59,10 +61,12 @@ export const CHECKS: readonly Check[] = [
   otherSiteFirst,
   pHOutOfReach,
   reagentEatenByProton,
+  runawayPair,
   siteNotFound,
   solventAttacked,
   solventLosesProton,
   solventOutOfRange,
+  toxicGas,
   transferPartial,
   transferSlow,
   transferUphill,

@@ -113,16 +113,13 @@ export interface ReagentRow extends Sourced {
 /** Two things that must not meet, or one thing that must not be made; a caution never claims that anything is safe. */
 export interface CautionRow extends Sourced {
   readonly id: string;
-  /** toxic-gas, gas-release, runaway-pair, skin-carrier */
-  readonly check: string;
-  /** What triggers it: `reagent:NAME`, `role:ROLE`, `group:SMARTS`, `solvent:NAME`, `kind:SOLVENT-KIND`, joined with `|` for "or". */
+  readonly check: 'toxic-gas' | 'runaway-pair';
+  /** `reagent:NAME`, `role:ROLE`, `solvent:NAME` or `kind:KIND` of a solvent, joined with ` | ` for "or"; empty where `group` decides. */
   readonly first: string;
-  readonly second: string | null;
-  /** The acid whose neutral form leaves as a gas, by SMILES, and how far below its pKa + margin the flask must be. */
-  readonly gas: string | null;
-  readonly gasPKa: number | null;
-  readonly gasMargin: number | null;
-  /** °C; above it the caution speaks. */
+  readonly second: string;
+  /** Group whose protonated form leaves as a gas. */
+  readonly group: string;
+  /** °C from which the pair is a danger. */
   readonly aboveTemperature: number | null;
   readonly hazard: string;
   readonly advice: string;
