@@ -75,7 +75,8 @@ describe('chemistry', () => {
   it('a transfer that goes uphill is underlined at its site, and the hover gives the figures', async () => {
     await workbench.openFile('uphill.lyate');
     const squiggle = workbench.squiggles('error').first();
-    await squiggle.waitFor();
+    // The first findings wait for the workbench to wake its extensions.
+    await squiggle.waitFor({ timeout: 140_000 });
     const box = (await squiggle.boundingBox())!;
     const site = (await workbench.page
       .locator('.view-line', { hasText: 'deprotonate' })

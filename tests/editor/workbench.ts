@@ -8,7 +8,7 @@ import { mkdirSync, mkdtempSync, writeFileSync } from 'node:fs';
 import { createServer } from 'node:net';
 import { tmpdir } from 'node:os';
 import { dirname, join, resolve } from 'node:path';
-import { type Browser, chromium, type Locator, type Page } from 'playwright-core';
+import { type Browser, chromium, type Frame, type Locator, type Page } from 'playwright-core';
 import { BROWSER, NODE, WORKBENCH } from './fetch.ts';
 
 const SETTINGS = {
@@ -45,6 +45,10 @@ export interface Workbench {
   /** Squiggles of a severity that can be seen. */
   squiggles(severity: 'error' | 'warning' | 'info'): Locator;
   screenshot(name: string): Promise<void>;
+  /** Changes settings of the user while the workbench runs. */
+  set(settings: Readonly<Record<string, unknown>>): void;
+  /** The page inside the webview that is shown. */
+  webview(): Promise<Frame>;
   reload(): Promise<void>;
   stop(): Promise<void>;
 }
@@ -59,7 +63,9 @@ export async function startWorkbench(
   for (const [name, text] of Object.entries({ '.git/HEAD': 'ref: refs/heads/main\n', ...files })) {
     write(join(folder, name), text);
   }
-  write(join(data, 'data/User/settings.json'), JSON.stringify({ ...SETTINGS, ...settings }));
+  const set = (more: Readonly<Record<string, unknown>>) =>
+    write(join(data, 'data/User/settings.json'), JSON.stringify({ ...SETTINGS, ...settings, ...more }));
+  set({});
   const program = [
     join(WORKBENCH, 'out/server-main.js'),
     '--accept-server-license-terms',
@@ -83,10 +89,15 @@ export async function startWorkbench(
   page.setDefaultTimeout(60_000);
   await page.goto(`${address}/?folder=${folder}`);
   await ready(page);
-  return driver(page, browser, server, folder);
+  return driver(page, browser, server, { folder, set });
 }
 
-function driver(page: Page, browser: Browser, server: ChildProcess, folder: string): Workbench {
+function driver(
+  page: Page,
+  browser: Browser,
+  server: ChildProcess,
+  { folder, set }: Pick<Workbench, 'folder' | 'set'>,
+): Workbench {
   const quickInput = page.locator('.quick-input-widget .quick-input-box input');
   /** Opens quick open, which the workbench swallows while it is still busy. */
   const quickOpen = async (text: string) => {
@@ -105,6 +116,12 @@ function driver(page: Page, browser: Browser, server: ChildProcess, folder: stri
     page,
     folder,
     server,
+    set,
+    async webview() {
+      const inner = page.frameLocator('iframe.webview').frameLocator('#active-frame').locator('body');
+      await inner.waitFor();
+      return (await (await inner.elementHandle())?.ownerFrame())!;
+    },
     async openFile(name) {
       // From the tree, because a search for files needs a program that the registry does not bring.
       await page.locator('.explorer-folders-view .monaco-list-row', { hasText: name }).first().dblclick();

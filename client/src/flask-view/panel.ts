@@ -107,9 +107,9 @@ export function createFlaskView(context: vscode.ExtensionContext, client: BaseLa
   };
 }
 
-function pageOf({ asWebviewUri, cspSource }: vscode.Webview, script: vscode.Uri): string {
+function pageOf(webview: vscode.Webview, script: vscode.Uri): string {
   const nonce = crypto.randomUUID().replaceAll('-', '');
-  const policy = `default-src 'none'; img-src data: ${cspSource}; style-src 'nonce-${nonce}'; script-src 'nonce-${nonce}'`;
+  const policy = `default-src 'none'; img-src data: ${webview.cspSource}; style-src 'nonce-${nonce}'; script-src 'nonce-${nonce}'`;
   return `<!DOCTYPE html>
 <html lang="en">
 <head>
@@ -118,6 +118,6 @@ function pageOf({ asWebviewUri, cspSource }: vscode.Webview, script: vscode.Uri)
 <title>Flask</title>
 <style nonce="${nonce}">${STYLES}</style>
 </head>
-<body><script nonce="${nonce}" src="${asWebviewUri(script)}"></script></body>
+<body><script nonce="${nonce}" src="${webview.asWebviewUri(script)}"></script></body>
 </html>`;
 }

@@ -83,12 +83,16 @@ const POINTS = 121;
 /** pH units shown beyond the outermost couples. */
 const MARGIN = 2;
 
-/** The flask after the last statement at or above a line that changes it; null outside steps and before the first one. */
+/**
+ * The flask after the last statement at or above a line that changes it, on the step's own line after its last one.
+ *
+ * Null outside steps and for steps that charge nothing.
+ */
 export function flaskPictureAt(analysed: Analysed, line: number): FlaskPicture | null {
   const found = stepAt(analysed, line);
   if (found === null) return null;
   const { facts } = found.step;
-  const within = line - found.firstLine;
+  const within = line === found.firstLine ? Number.POSITIVE_INFINITY : line - found.firstLine;
   const before = facts.moments.filter(({ statement }) => statement.range.start.line <= within);
   const moment = before.at(-1) ?? facts.moments[0];
   if (moment === undefined) return null;
