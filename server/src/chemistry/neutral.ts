@@ -6,7 +6,9 @@
  * Invariants:
  *  1. Atoms keep their indices; explicit hydrogens become counts and stay behind as lone atoms.   (tests/chemistry/neutral.test.ts)
  *  2. `added` is the number of protons that the reference form has more than the drawing, atom by atom.
- *  3. Bonds to the metals of groups 1 and 2 and to zinc are split; charges that no proton can mend stay.
+ *  3. Bonds to the metals of groups 1 and 2, to zinc, and of carbon to aluminium are split; charges that no proton can
+ *     mend stay.
+ *  4. An enolate drawn on oxygen is the anion of the enol as drawn, not of the ketone; `enolates` names such places.
  */
 import { buildGraph } from './build-graph.ts';
 import type { Graph } from './graph.ts';
@@ -18,6 +20,13 @@ export interface NeutralForm {
   readonly added: readonly number[];
   /** Explicit hydrogens that became counts of their neighbours. */
   readonly absorbed: ReadonlySet<number>;
+  /** Anions C=C–O−: the oxygen that lacks the proton, and the carbon that would carry it in the ketone. */
+  readonly enolates: readonly Enolate[];
+}
+
+export interface Enolate {
+  readonly oxygen: number;
+  readonly carbon: number;
 }
 
 const SPLIT = new Set(['Li', 'Na', 'K', 'Rb', 'Cs', 'Be', 'Mg', 'Ca', 'Sr', 'Ba', 'Zn']);
@@ -56,16 +65,17 @@ export function neutralForm(source: Graph): NeutralForm {
   writeYlides(draft);
   writeOxides(draft);
   writeNitronates(draft);
-  writeEnolates(draft);
+  const enolates = findEnolates(draft);
   protonateAnions(draft, pairedAnions(draft));
   spreadCarbocations(draft);
   deprotonateCations(draft);
   shiftCations(draft);
+  deprotonateOxides(draft);
   giveFreeProtons(draft);
-  const graph = rebuild(draft);
+  const graph = isUnchanged(draft) ? source : rebuild(draft);
   return graph === null
-    ? { graph: source, added: source.atoms.map(() => 0), absorbed: new Set() }
-    : { graph, added: draft.added, absorbed: draft.absorbed };
+    ? { graph: source, added: source.atoms.map(() => 0), absorbed: new Set(), enolates: [] }
+    : { graph, added: draft.added, absorbed: draft.absorbed, enolates };
 }
 
 function neighboursOf({ source, orders }: Draft, atom: number): { other: number; bond: number }[] {
@@ -89,21 +99,16 @@ function absorbHydrogens(draft: Draft): void {
 
 function splitMetals(draft: Draft): void {
   draft.source.bonds.forEach(({ from, to }, bond) => {
-    const [a, b] = [draft.source.atoms[from]!, draft.source.atoms[to]!];
-    const first = SPLIT.has(a.element);
-    if (draft.orders[bond] === 0 || first === SPLIT.has(b.element)) return;
+    const [a, b] = [draft.source.atoms[from]!.element, draft.source.atoms[to]!.element];
+    const first = SPLIT.has(a) || (a === 'Al' && b === 'C');
+    const second = SPLIT.has(b) || (b === 'Al' && a === 'C');
+    if (draft.orders[bond] === 0 || first === second) return;
     const [metal, partner] = first ? [from, to] : [to, from];
     const order = draft.orders[bond]!;
     draft.charges[metal]! += order;
     draft.charges[partner]! -= order;
     draft.orders[bond] = 0;
   });
-  for (const { element, index, hydrogens } of draft.source.atoms) {
-    // A metal hydride written as one atom, [LiH] or [NaH]: the hydrogens belong to the couple of dihydrogen.
-    if (!SPLIT.has(element) || hydrogens === 0) continue;
-    draft.charges[index]! += hydrogens;
-    draft.hydrogens[index] = 0;
-  }
 }
 
 /** C=P and C=S of ylides become the carbanion beside an onium centre. */
@@ -162,25 +167,19 @@ function writeNitronates(draft: Draft): void {
   }
 }
 
-/** C=C–O− becomes the carbanion beside a carbonyl group: the proton of an enolate comes to rest on carbon. */
-function writeEnolates(draft: Draft): void {
-  for (const { index, element, aromatic } of draft.source.atoms) {
-    if (element !== 'O' || aromatic || draft.charges[index] !== -1) continue;
+function findEnolates(draft: Draft): Enolate[] {
+  return draft.source.atoms.flatMap(({ index, element, aromatic }) => {
+    if (element !== 'O' || aromatic || draft.charges[index] !== -1) return [];
     const around = neighboursOf(draft, index);
     const carbon = around[0];
-    if (around.length !== 1 || carbon === undefined) continue;
+    if (around.length !== 1 || carbon === undefined) return [];
     const middle = draft.source.atoms[carbon.other]!;
-    if (middle.element !== 'C' || middle.aromatic) continue;
+    if (middle.element !== 'C' || middle.aromatic) return [];
     const alkene = neighboursOf(draft, carbon.other).find(
-      ({ other, bond }) =>
-        draft.orders[bond] === 2 && draft.source.atoms[other]!.element === 'C' && draft.charges[other] === 0,
+      ({ other, bond }) => draft.orders[bond] === 2 && draft.source.atoms[other]!.element === 'C',
     );
-    if (alkene === undefined) continue;
-    draft.orders[carbon.bond] = 2;
-    draft.charges[index] = 0;
-    draft.orders[alkene.bond] = 1;
-    draft.charges[alkene.other] = -1;
-  }
+    return alkene === undefined ? [] : [{ oxygen: index, carbon: alkene.other }];
+  });
 }
 
 /** Anions that belong to a neighbouring cation in the usual way of drawing: nitro, N-oxide, azide, diazo, isocyanide. */
@@ -304,6 +303,25 @@ function isPyrroleLike(draft: Draft, atom: number): boolean {
   return element === 'N' && aromatic && draft.charges[atom] === 0 && draft.hydrogens[atom] === 1;
 }
 
+/** The hydroxyl group on a quaternary nitrogen is the protonated form of an N-oxide or nitrone. */
+function deprotonateOxides(draft: Draft): void {
+  for (const { index, element } of draft.source.atoms) {
+    if (element !== 'N' || draft.charges[index] !== 1 || draft.hydrogens[index] !== 0) continue;
+    const around = neighboursOf(draft, index);
+    if (around.some(({ other }) => draft.charges[other]! < 0)) continue;
+    const hydroxyl = around.find(
+      ({ other }) =>
+        draft.source.atoms[other]!.element === 'O' &&
+        draft.hydrogens[other] === 1 &&
+        draft.charges[other] === 0,
+    );
+    if (hydroxyl === undefined) continue;
+    draft.hydrogens[hydroxyl.other] = 0;
+    draft.charges[hydroxyl.other] = -1;
+    draft.added[hydroxyl.other]! -= 1;
+  }
+}
+
 /** [H+].[Cl-] is hydrogen chloride: a bare proton belongs to the first anion beside it. */
 function giveFreeProtons(draft: Draft): void {
   for (const { index, number } of draft.source.atoms) {
@@ -314,6 +332,16 @@ function giveFreeProtons(draft: Draft): void {
     draft.charges[index] = 0;
     draft.absorbed.add(index);
   }
+}
+
+function isUnchanged({ source, charges, hydrogens, orders, replace }: Draft): boolean {
+  return (
+    !replace &&
+    source.atoms.every(
+      ({ index, charge, hydrogens: count }) => charge === charges[index] && count === hydrogens[index],
+    ) &&
+    source.bonds.every(({ index, order }) => order === orders[index])
+  );
 }
 
 function rebuild(draft: Draft): Graph | null {
