@@ -66,7 +66,8 @@ test.each([
 ] as const)('%s has sensible steps in water', (_, smiles, expected, margin) => {
   const steps = stepsOf(smiles, -2, 13.2);
   expect(steps).toHaveLength(expected.length);
-  for (const [k, value] of steps.entries()) expect(Math.abs(value - expected[k]!), `${value}`).toBeLessThan(margin);
+  for (const [k, value] of steps.entries())
+    expect(Math.abs(value - expected[k]!), `${value}`).toBeLessThan(margin);
 });
 
 test('couples are parallel to the molecule and steps rise', () => {
