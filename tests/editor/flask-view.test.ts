@@ -97,11 +97,11 @@ describe('the Flask view', () => {
   });
 
   it.each([
-    ['Default Light Modern', 'light'],
-    ['Default Dark Modern', 'dark'],
-    ['Default High Contrast', 'high-contrast'],
+    ['Light Modern', 'light'],
+    ['Dark Modern', 'dark'],
+    ['Dark High Contrast', 'high-contrast'],
   ])('breaks no rule of accessibility in %s', async (theme, name) => {
-    workbench.set({ 'workbench.colorTheme': theme });
+    await workbench.theme(theme);
     const ground = { light: 'vscode-light', dark: 'vscode-dark', 'high-contrast': 'vscode-high-contrast' }[
       name
     ]!;

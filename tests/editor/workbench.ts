@@ -45,8 +45,8 @@ export interface Workbench {
   /** Squiggles of a severity that can be seen. */
   squiggles(severity: 'error' | 'warning' | 'info'): Locator;
   screenshot(name: string): Promise<void>;
-  /** Changes settings of the user while the workbench runs. */
-  set(settings: Readonly<Record<string, unknown>>): void;
+  /** Chooses a colour theme by its name in the list of themes. */
+  theme(name: string): Promise<void>;
   /** The page inside the webview that is shown. */
   webview(): Promise<Frame>;
   reload(): Promise<void>;
@@ -63,9 +63,7 @@ export async function startWorkbench(
   for (const [name, text] of Object.entries({ '.git/HEAD': 'ref: refs/heads/main\n', ...files })) {
     write(join(folder, name), text);
   }
-  const set = (more: Readonly<Record<string, unknown>>) =>
-    write(join(data, 'data/User/settings.json'), JSON.stringify({ ...SETTINGS, ...settings, ...more }));
-  set({});
+  write(join(data, 'data/User/settings.json'), JSON.stringify({ ...SETTINGS, ...settings }));
   const program = [
     join(WORKBENCH, 'out/server-main.js'),
     '--accept-server-license-terms',
@@ -89,15 +87,10 @@ export async function startWorkbench(
   page.setDefaultTimeout(60_000);
   await page.goto(`${address}/?folder=${folder}`);
   await ready(page);
-  return driver(page, browser, server, { folder, set });
+  return driver(page, browser, server, folder);
 }
 
-function driver(
-  page: Page,
-  browser: Browser,
-  server: ChildProcess,
-  { folder, set }: Pick<Workbench, 'folder' | 'set'>,
-): Workbench {
+function driver(page: Page, browser: Browser, server: ChildProcess, folder: string): Workbench {
   const quickInput = page.locator('.quick-input-widget .quick-input-box input');
   /** Opens quick open, which the workbench swallows while it is still busy. */
   const quickOpen = async (text: string) => {
@@ -116,7 +109,11 @@ function driver(
     page,
     folder,
     server,
-    set,
+    async theme(name) {
+      await this.command('Preferences: Color Theme');
+      await page.locator('.quick-input-list .monaco-list-row', { hasText: name }).first().click();
+      await quickInput.waitFor({ state: 'hidden' });
+    },
     async webview() {
       const inner = page.frameLocator('iframe.webview').frameLocator('#active-frame').locator('body');
       await inner.waitFor();

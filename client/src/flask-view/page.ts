@@ -35,10 +35,11 @@ const TABS: readonly { readonly id: string; readonly title: string; readonly dra
 ];
 
 const editor = acquireVsCodeApi();
+const page = document.body.appendChild(document.createElement('main'));
 const heading = element('h1', 'heading');
 const facts = element('p', 'facts');
 const tabList = element('div', 'tabs');
-const panel = element('main', 'panel');
+const panel = element('div', 'panel');
 const tools = element('div', 'tools');
 const status = element('p', 'status');
 let flask: FlaskPicture | null = null;
@@ -81,7 +82,7 @@ function element<Name extends keyof HTMLElementTagNameMap>(
 ): HTMLElementTagNameMap[Name] {
   const made = document.createElement(name);
   made.id = id;
-  return document.body.appendChild(made);
+  return page.appendChild(made);
 }
 
 function show(tab: (typeof TABS)[number]): void {
