@@ -5,6 +5,7 @@
  * Units: pK units per unit charge.
  * Sources: stepwise constants of dicarboxylic acids, diamines and amino acids (Perrin, Dempsey and Serjeant 1981), worked out.
  */
+import { atomKinds } from './atom-kinds.ts';
 import { coresOf } from './cores.ts';
 import { bondDistances } from './distances.ts';
 import type { Graph } from './graph.ts';
@@ -47,3 +48,26 @@ function waysBetween(graph: Graph, distance: Int16Array, end: number): number {
   ).length;
   return Math.max(1, arrivals);
 }
+
+/**
+ * Whether a proton that leaves one atom and one that comes to the other make a tautomer, not a zwitterion.
+ *
+ * So it is where every atom between them is part of the same π system.
+ */
+export function makesTautomer(graph: Graph, first: number, second: number): boolean {
+  const kinds = atomKinds(graph);
+  const seen = new Set([first]);
+  const queue = [first];
+  for (let head = 0; head < queue.length; head++) {
+    for (const next of graph.atoms[queue[head]!]!.neighbours) {
+      if (next === second) return true;
+      if (seen.has(next) || SATURATED.test(kinds[next]!)) continue;
+      seen.add(next);
+      queue.push(next);
+    }
+  }
+  return false;
+}
+
+/** Kinds of atoms that end a π system. */
+const SATURATED = /^(C[0-4]|N[0-3]|Na[0-3]|O|OH|S|SH|P.*|S\(.*)$/;

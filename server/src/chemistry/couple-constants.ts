@@ -9,7 +9,7 @@
  *  2. A measured value is returned unchanged on its own scale.
  */
 import type { ScaleId } from '../tables/rows.ts';
-import { chargePull, donationFactor } from './charges.ts';
+import { chargePull, donationFactor, makesTautomer } from './charges.ts';
 import type { Constant, Couple, OwnValue, Perceived, ProtonStep } from './couple.ts';
 import { type EstimatorTables, estimateInWater } from './estimate.ts';
 import type { Graph } from './graph.ts';
@@ -130,11 +130,14 @@ function overridden(
   };
   const here = measured.filter(({ constant }) => constant.scale === scale);
   const covered = new Set(here.map(({ couple, step }) => `${couple} ${step}`));
-  for (const value of measured) {
-    if (value.constant.scale === scale || covered.has(`${value.couple} ${value.step}`)) continue;
-    const constant = sources.carry(value.constant, perceived.couples[value.couple]!, scale);
-    if (constant !== null) put({ ...value, constant });
-  }
+  const carried = measured
+    .filter(({ couple, step, constant }) => constant.scale !== scale && !covered.has(`${couple} ${step}`))
+    .flatMap((value) => {
+      const constant = sources.carry(value.constant, perceived.couples[value.couple]!, scale);
+      return constant === null ? [] : [{ ...value, constant }];
+    });
+  // The surest comes last and stays.
+  for (const value of carried.sort((a, b) => b.constant.sd - a.constant.sd)) put(value);
   for (const value of here) put(value);
   for (const value of own) {
     const constant =
@@ -197,7 +200,7 @@ function ownConstants(perceived: Perceived, own: OwnValue): MeasuredConstant[] {
 function estimatedSteps(perceived: Perceived, graph: Graph, tables: EstimatorTables): ProtonStep[][] {
   const estimates = perceived.couples.map((couple) => estimateInWater(graph, couple, 1, tables));
   return perceived.components.map(({ index: component }) => {
-    const places: { readonly site: MicroSite; readonly atom: number }[] = [];
+    const places: Place[] = [];
     const alone: ProtonStep[] = [];
     perceived.couples.forEach((couple, index) => {
       const constant = estimates[index];
@@ -217,15 +220,7 @@ function estimatedSteps(perceived: Perceived, graph: Graph, tables: EstimatorTab
     });
     const steps = macroscopicSteps(
       places.map(({ site }) => site),
-      (first, second) => {
-        const [one, other] = [places[first]!, places[second]!];
-        const opposite = one.site.kind === other.site.kind ? 1 : OPPOSITE_SHARE;
-        const donation =
-          one.site.kind === 'acid' && other.site.kind === 'acid'
-            ? 1
-            : donationFactor(graph, one.atom, other.atom);
-        return opposite * donation * chargePull(graph, one.atom, other.atom);
-      },
+      (first, second) => pull(perceived, graph, places[first]!, places[second]!),
     ).map(
       ({ pK, couple }): ProtonStep => ({
         couple: perceived.couples[couple]!,
@@ -234,6 +229,31 @@ function estimatedSteps(perceived: Perceived, graph: Graph, tables: EstimatorTab
     );
     return [...steps, ...alone].sort((a, b) => a.constant.value - b.constant.value);
   });
+}
+
+interface Place {
+  readonly site: MicroSite;
+  readonly atom: number;
+}
+
+/** The pull over two bonds, below every pull over fewer. */
+const BY_TWO_BONDS = 4.5;
+/** Acids whose anion is no tautomer of anything, even beside a base of the same π system. */
+const ZWITTERIONIC = new Set(['carboxylic-acid', 'sulfonic-acid', 'phosphoric', 'boronic-acid']);
+
+/** The pull between two sites; none where acid and base only exchange a proton within one π system. */
+function pull({ couples }: Perceived, graph: Graph, one: Place, other: Place): number {
+  const alone = chargePull(graph, one.atom, other.atom);
+  if (alone === 0) return 0;
+  if (one.site.kind === other.site.kind) {
+    return one.site.kind === 'acid' ? alone : alone * donationFactor(graph, one.atom, other.atom);
+  }
+  const acid = one.site.kind === 'acid' ? one : other;
+  // Two atoms on a third share one proton in either place.
+  if (BY_TWO_BONDS <= alone) return 0;
+  const keepsZwitterion = ZWITTERIONIC.has(couples[acid.site.couple]!.family);
+  if (!keepsZwitterion && makesTautomer(graph, one.atom, other.atom)) return 0;
+  return OPPOSITE_SHARE * alone * donationFactor(graph, one.atom, other.atom);
 }
 
 function withStatistics(constant: Constant, couple: Couple): Constant {

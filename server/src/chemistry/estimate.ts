@@ -33,7 +33,7 @@ export interface EstimatorTables {
 
 interface Estimator {
   readonly substituents: Substituents;
-  readonly values: ReadonlyMap<string, number>;
+  readonly values: ReadonlyMap<string, TermRow>;
   readonly families: ReadonlyMap<string, SpreadRow>;
   readonly variances: ReadonlyMap<string, number>;
   readonly parents: ReadonlyMap<string, ParentRow>;
@@ -63,13 +63,13 @@ export function estimateInWater(
   const parent = estimator.parents.get(site.group);
   const family = estimator.families.get(`${site.kind[0]}.${site.family}`);
   const familiar = family !== undefined && (FEW < family.n || estimator.values.has(`group:${site.group}`));
-  if (!familiar || isBeyondFit(site, parent)) return fromParent(parent);
+  if (!familiar || isBeyondFit(site, estimator)) return fromParent(parent);
   const terms = termsOf(graph, site, estimator.substituents);
   let value = MIDDLE;
   let novelty = 0;
   const parts = new Map<string, number>();
   for (const term of terms) {
-    const worth = estimator.values.get(term.name);
+    const worth = estimator.values.get(term.name)?.value;
     if (worth === undefined)
       novelty += (estimator.variances.get(termClass(term.name)) ?? 0) * term.factor ** 2;
     else {
@@ -90,21 +90,13 @@ export function estimateInWater(
   };
 }
 
-/** Carbon acids far beyond water, and rules that carry their own value, stand on the rule's parent value. */
-function isBeyondFit(site: Site, parent: ParentRow | undefined): boolean {
-  return (
-    site.family === 'carbon-acid' &&
-    parent !== undefined &&
-    parent.water !== null &&
-    CARBON_LIMIT < parent.water
-  );
+/** Carbon acids of kinds that hardly anybody has measured in water stand on their group's own value. */
+function isBeyondFit(site: Site, { values }: Estimator): boolean {
+  return site.family === 'carbon-acid' && (values.get(`group:${site.group}`)?.n ?? 0) < FEW;
 }
 
 /** A family with no more molecules in the fit speaks only for groups that the fit has met. */
 const FEW = 4;
-/** Above this pKa no carbon acid was measured in water itself. */
-const CARBON_LIMIT = 22;
-
 function fromParent(parent: ParentRow | undefined): Constant | null {
   if (parent === undefined || parent.water === null) return null;
   const sd = parent.waterSd ?? UNKNOWN_SD;
@@ -167,7 +159,7 @@ function estimatorOf(tables: EstimatorTables): Estimator {
   if (known !== undefined) return known;
   const made: Estimator = {
     substituents: readSubstituents(tables.substituents),
-    values: new Map(tables.terms.map(({ name, value }) => [name, value])),
+    values: new Map(tables.terms.map((row) => [row.name, row])),
     families: new Map(tables.spreads.filter(({ kind }) => kind === 'family').map((row) => [row.name, row])),
     variances: new Map(
       tables.spreads.filter(({ kind }) => kind === 'term').map(({ name, value }) => [name, value]),
