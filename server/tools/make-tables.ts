@@ -15,6 +15,7 @@ import { foldName } from '../src/tables/names.ts';
 import { type Cell, type Row, readTable, TableFault } from './read-table.ts';
 
 const TABLES = [
+  'activation',
   'groups',
   'substituents',
   'terms',

@@ -6,6 +6,7 @@
  */
 import { foldName } from './names.ts';
 import type {
+  ActivationRow,
   CautionRow,
   EnthalpyRow,
   GasRow,
@@ -27,6 +28,7 @@ import type {
 
 interface Built {
   readonly version: string;
+  readonly activation: readonly ActivationRow[];
   readonly groups: readonly GroupRow[];
   readonly substituents: readonly SubstituentRow[];
   readonly terms: readonly TermRow[];
