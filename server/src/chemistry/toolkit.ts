@@ -1,5 +1,5 @@
 /**
- * The door to the chemistry library: canonical keys, symmetry, log P, masses and drawings.
+ * The door to the chemistry library: canonical keys, log P and drawings; with masses and symmetry of our own beside them.
  *
  * Knows: graphs.  Must not know: acidity, plans.
  * Invariants: the library only sees text printed from a graph that the strict reader accepted.   (tests/chemistry/toolkit.test.ts)
@@ -9,6 +9,8 @@ import { Molecule, MoleculeProperties } from 'openchemlib';
 import { massOf } from './elements.ts';
 import type { Graph } from './graph.ts';
 import { writeSmiles } from './write-smiles.ts';
+
+export { symmetryClasses } from './symmetry.ts';
 
 /** Molecules of more atoms are not drawn. */
 const LARGEST_DRAWING = 200;
@@ -23,22 +25,6 @@ const LARGEST_KEY = 600;
 export function canonicalKey(graph: Graph, fragment: readonly number[]): string | null {
   if (LARGEST_KEY < fragment.length) return null;
   return parse(writeSmiles(graph, fragment).text)?.getIDCode() ?? null;
-}
-
-/** For each atom of the graph its class under the symmetry of its fragment; −1 where there is none. */
-export function symmetryClasses(graph: Graph, fragment: readonly number[]): Map<number, number> {
-  const classes = new Map<number, number>();
-  const { text, order } = writeSmiles(graph, fragment);
-  const molecule = LARGEST_KEY < fragment.length ? null : parse(text);
-  if (molecule === null || molecule.getAllAtoms() !== order.length) {
-    for (const atom of fragment) classes.set(atom, atom);
-    return classes;
-  }
-  molecule.ensureHelperArrays(Molecule.cHelperSymmetrySimple);
-  order.forEach((atom, place) => {
-    classes.set(atom, molecule.getSymmetryRank(place));
-  });
-  return classes;
 }
 
 /** Calculated log P of the form drawn; null where the library has none. */
