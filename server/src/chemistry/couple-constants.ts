@@ -121,12 +121,18 @@ function overridden(
   sources: ConstantSources,
 ): ProtonStep[][] {
   const result = steps.map((list) => [...list]);
+  const counted = countedSteps(perceived, steps, measured);
   const put = ({ couple: index, step, constant }: MeasuredConstant) => {
     const couple = perceived.couples[index]!;
     const list = result[couple.component]!;
-    const place = placeOf(list, couple, step, constant);
+    const known = step === null ? undefined : counted[couple.component]!.get(step);
+    const place = known?.place ?? nearestPlace(list, couple, constant);
     if (place === -1) list.push({ couple, constant });
-    else list[place] = { couple: step === null ? couple : list[place]!.couple, constant };
+    else
+      list[place] = {
+        couple: known?.couples.has(list[place]!.couple) ? list[place]!.couple : couple,
+        constant,
+      };
   };
   const here = measured.filter(({ constant }) => constant.scale === scale);
   const covered = new Set(here.map(({ couple, step }) => `${couple} ${step}`));
@@ -150,15 +156,46 @@ function overridden(
   return result;
 }
 
-/** The step that a value replaces: the one it counts, or that of its couple which lies nearest. */
-function placeOf(
-  list: readonly ProtonStep[],
-  couple: Couple,
-  step: number | null,
-  constant: Constant,
-): number {
-  if (step !== null && list[step - 1] !== undefined && sameKin(list[step - 1]!.couple, couple))
-    return step - 1;
+interface CountedStep {
+  readonly place: number;
+  /** Couples of the row's site: one, or the equivalent atoms of which only some have lost their proton. */
+  readonly couples: ReadonlySet<Couple>;
+}
+
+/**
+ * Where in the list of each component the measured steps belong.
+ *
+ * They count the protons of the sites that the rows name; the weakly basic oxygens of an acid, say, are not among them.
+ */
+function countedSteps(
+  { couples, components }: Perceived,
+  steps: readonly (readonly ProtonStep[])[],
+  measured: readonly MeasuredConstant[],
+): ReadonlyMap<number, CountedStep>[] {
+  return components.map(({ index }) => {
+    const sites = new Map<number, Set<Couple>>();
+    for (const { couple, step } of measured) {
+      if (step === null || couples[couple]!.component !== index) continue;
+      sites.set(step, (sites.get(step) ?? new Set()).add(couples[couple]!));
+    }
+    const named = new Set([...sites.values()].flatMap((set) => [...set]));
+    const places = steps[index]!.flatMap(({ couple }, place) => (named.has(couple) ? [place] : []));
+    const numbers = [...sites.keys()].sort((a, b) => a - b);
+    const placeOf = (step: number) => {
+      if ((numbers.at(-1) ?? 0) <= places.length) return places[step - 1];
+      return numbers.length === places.length ? places[numbers.indexOf(step)] : undefined;
+    };
+    return new Map(
+      numbers.flatMap((step) => {
+        const place = placeOf(step);
+        return place === undefined ? [] : [[step, { place, couples: sites.get(step)! }] as const];
+      }),
+    );
+  });
+}
+
+/** The step of a couple that lies nearest to a value; −1 where the couple has none. */
+function nearestPlace(list: readonly ProtonStep[], couple: Couple, constant: Constant): number {
   let best = -1;
   list.forEach((one, place) => {
     if (one.couple !== couple) return;
@@ -168,10 +205,6 @@ function placeOf(
     if (nearer) best = place;
   });
   return best;
-}
-
-function sameKin(first: Couple, second: Couple): boolean {
-  return first === second || first.group === second.group;
 }
 
 /** An own value with its couple: the one at its atoms, or the molecule's only one. */

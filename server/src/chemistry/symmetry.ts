@@ -4,48 +4,65 @@
  * Knows: graphs.  Must not know: acidity.
  * Invariant: classes agree with those of an independent canonizer.   (tests/chemistry/symmetry.test.ts)
  * Absent on purpose: stereochemistry, which does not change a constant by more than its uncertainty.
- * Cost: one pass over the bonds for each bond of distance that still splits a class.
+ * Cost: each round looks only at atoms beside those that the round before told apart.
  */
 import type { Graph } from './graph.ts';
 
-/** Fragments of more atoms are not refined: each atom is its own class. */
-const LARGEST = 600;
-
 /** For each atom of the fragment its class; two atoms of one class are interchangeable. */
 export function symmetryClasses(graph: Graph, fragment: readonly number[]): Map<number, number> {
-  if (LARGEST < fragment.length) return new Map(fragment.map((atom) => [atom, atom]));
-  let classes = new Map<number, number>();
-  let count = 0;
-  assign((atom) => {
+  const classes = new Map<number, number>(fragment.map((atom) => [atom, 0]));
+  const sizes = [fragment.length];
+  let changed = split(new Set(fragment), (atom) => {
     const { number, charge, hydrogens, isotope, aromatic } = graph.atoms[atom]!;
     return `${number} ${charge} ${hydrogens} ${isotope} ${aromatic}`;
   });
-  for (let before = 0; before < count && count < fragment.length; ) {
-    before = count;
-    assign((atom) => {
-      const { neighbours, bonds } = graph.atoms[atom]!;
-      const around = neighbours.map((other, place) => {
-        const { aromatic, order } = graph.bonds[bonds[place]!]!;
-        return classes.get(other)! * 8 + (aromatic ? 5 : order);
-      });
-      return `${classes.get(atom)} ${around.sort((a, b) => a - b)}`;
-    });
-  }
+  let beside = new Set(fragment);
+  do {
+    changed = split(beside, surroundings);
+    beside = new Set(changed.flatMap((atom) => graph.atoms[atom]!.neighbours));
+  } while (changed.length !== 0);
   return classes;
 
-  function assign(description: (atom: number) => string): void {
-    const known = new Map<string, number>();
-    const next = new Map<number, number>();
-    for (const atom of fragment) {
-      const text = description(atom);
-      let found = known.get(text);
-      if (found === undefined) {
-        found = known.size;
-        known.set(text, found);
-      }
-      next.set(atom, found);
+  function surroundings(atom: number): string {
+    const { neighbours, bonds } = graph.atoms[atom]!;
+    const around = neighbours.map((other, place) => {
+      const { aromatic, order } = graph.bonds[bonds[place]!]!;
+      return classes.get(other)! * 8 + (aromatic ? 5 : order);
+    });
+    return around.sort((a, b) => a - b).join(' ');
+  }
+
+  /**
+   * Gives atoms of one class that are described differently different classes.
+   *
+   * Atoms of a class that are not looked at stay together: nothing beside them has changed. They, or the largest part
+   * where all are looked at, keep the number of the class.
+   *
+   * @returns the atoms whose class is new
+   */
+  function split(atoms: ReadonlySet<number>, describe: (atom: number) => string): number[] {
+    const parts = new Map<number, Map<string, number[]>>();
+    for (const atom of atoms) {
+      const name = classes.get(atom)!;
+      if (sizes[name] === 1) continue;
+      let byText = parts.get(name);
+      if (byText === undefined) parts.set(name, (byText = new Map()));
+      const text = describe(atom);
+      const part = byText.get(text);
+      if (part === undefined) byText.set(text, [atom]);
+      else part.push(atom);
     }
-    classes = next;
-    count = known.size;
+    const moved: number[] = [];
+    for (const [name, byText] of parts) {
+      const members = [...byText.values()].sort((a, b) => b.length - a.length);
+      const looked = members.reduce((sum, part) => sum + part.length, 0);
+      for (const part of looked < sizes[name]! ? members : members.slice(1)) {
+        const fresh = sizes.push(part.length) - 1;
+        sizes[name]! -= part.length;
+        for (const atom of part) classes.set(atom, fresh);
+        moved.push(...part);
+      }
+    }
+    return moved;
   }
 }
