@@ -111,6 +111,8 @@ function driver(page: Page, browser: Browser, server: ChildProcess, folder: stri
     server,
     async theme(name) {
       await this.command('Preferences: Color Theme');
+      await page.locator('.quick-input-list .monaco-list-row', { hasText: 'Modern' }).first().waitFor();
+      await quickInput.fill(name);
       await page.locator('.quick-input-list .monaco-list-row', { hasText: name }).first().click();
       await quickInput.waitFor({ state: 'hidden' });
     },
