@@ -62,9 +62,11 @@ test('puts the same atoms together as an independent canonizer', () => {
   expect(differing).toEqual([]);
 });
 
-test('tells the ends of a long chain from its middle, and gives up sharing in a very large fragment', () => {
+test('tells the ends of a very long chain from its middle in little time', () => {
   const chain = graphOf('C'.repeat(300))!;
   expect(new Set(symmetryClasses(chain, chain.fragments[0]!).values()).size).toBe(150);
-  const large = graphOf('C'.repeat(700))!;
-  expect(new Set(symmetryClasses(large, large.fragments[0]!).values()).size).toBe(700);
+  const start = performance.now();
+  const large = graphOf('C'.repeat(5000))!;
+  expect(new Set(symmetryClasses(large, large.fragments[0]!).values()).size).toBe(2500);
+  expect(performance.now() - start).toBeLessThan(1000);
 });

@@ -45,8 +45,8 @@ export function symmetryClasses(graph: Graph, fragment: readonly number[]): Map<
     for (const atom of atoms) {
       const name = classes.get(atom)!;
       if (sizes[name] === 1) continue;
-      let byText = parts.get(name);
-      if (byText === undefined) parts.set(name, (byText = new Map()));
+      const byText = parts.get(name) ?? new Map<string, number[]>();
+      parts.set(name, byText);
       const text = describe(atom);
       const part = byText.get(text);
       if (part === undefined) byText.set(text, [atom]);

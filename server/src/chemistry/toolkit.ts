@@ -6,6 +6,7 @@
  * Units: g/mol; log P of octanol and water, dimensionless.
  */
 import { Molecule, MoleculeProperties } from 'openchemlib';
+import { boundedCache } from '../tables/cache.ts';
 import { massOf } from './elements.ts';
 import type { Graph } from './graph.ts';
 import { writeSmiles } from './write-smiles.ts';
@@ -14,8 +15,10 @@ export { symmetryClasses } from './symmetry.ts';
 
 /** Molecules of more atoms are not drawn. */
 const LARGEST_DRAWING = 200;
-/** Molecules of more atoms get no canonical key. */
-const LARGEST_KEY = 600;
+/** Fragments of more atoms get no canonical key and no log P, whose cost grows with the square of the size. */
+const LARGEST_KEY = 256;
+/** Keys by printed text: counter-ions and solvents return in every molecule. */
+const keys = boundedCache<string, string | null>(1000);
 
 /**
  * A key that is equal for equal fragments, however they are written.
@@ -24,7 +27,13 @@ const LARGEST_KEY = 600;
  */
 export function canonicalKey(graph: Graph, fragment: readonly number[]): string | null {
   if (LARGEST_KEY < fragment.length) return null;
-  return parse(writeSmiles(graph, fragment).text)?.getIDCode() ?? null;
+  const { text } = writeSmiles(graph, fragment);
+  let key = keys.get(text);
+  if (key === undefined) {
+    key = parse(text)?.getIDCode() ?? null;
+    keys.set(text, key);
+  }
+  return key;
 }
 
 /** Calculated log P of the form drawn; null where the library has none. */
