@@ -79,7 +79,7 @@ if (process.argv[2] !== 'tables') {
       ...browser,
       format: 'cjs',
       entryPoints: ['client/src/extension-browser.ts'],
-      outfile: 'dist/extension-browser.cjs',
+      outfile: 'dist/extension-browser.js',
       external: ['vscode'],
     }),
     bundle({
