@@ -41,6 +41,8 @@ interface Estimator {
 
 /** All sums start from the middle of the scale. */
 export const MIDDLE = 7;
+/** What it adds to the sd that a group's own value stands for all molecules of the group. */
+const STAND_IN_SD = 0.6;
 /** The sd of a value that stands in no table. */
 const UNKNOWN_SD = 3;
 const FIT_SOURCES: readonly string[] = ['hansch-1991', 'iupac-pka-2024'];
@@ -62,8 +64,10 @@ export function estimateInWater(
   const estimator = estimatorOf(tables);
   const parent = estimator.parents.get(site.group);
   const family = estimator.families.get(`${site.kind[0]}.${site.family}`);
-  const familiar = family !== undefined && (FEW < family.n || estimator.values.has(`group:${site.group}`));
-  if (!familiar || isBeyondFit(site, estimator)) return fromParent(parent);
+  const met = estimator.values.get(`group:${site.group}`)?.n ?? 0;
+  const familiar =
+    family !== undefined && (FEW < family.n || 0 < met) && (parent?.model !== 'fixed' || 1 < met);
+  if (!familiar || (site.family === 'carbon-acid' && met < FEW)) return fromParent(parent);
   const terms = termsOf(graph, site, estimator.substituents);
   let value = MIDDLE;
   let novelty = 0;
@@ -90,16 +94,12 @@ export function estimateInWater(
   };
 }
 
-/** Carbon acids of kinds that hardly anybody has measured in water stand on their group's own value. */
-function isBeyondFit(site: Site, { values }: Estimator): boolean {
-  return site.family === 'carbon-acid' && (values.get(`group:${site.group}`)?.n ?? 0) < FEW;
-}
-
-/** A family with no more molecules in the fit speaks only for groups that the fit has met. */
+/** A family with no more molecules in the fit speaks only for groups that the fit has met; carbon acids need as many of their group,
+ * and rules with a fixed value at least two. */
 const FEW = 4;
 function fromParent(parent: ParentRow | undefined): Constant | null {
   if (parent === undefined || parent.water === null) return null;
-  const sd = parent.waterSd ?? UNKNOWN_SD;
+  const sd = Math.hypot(parent.waterSd ?? UNKNOWN_SD, parent.model === 'fixed' ? 0 : STAND_IN_SD);
   return {
     value: parent.water,
     sd,

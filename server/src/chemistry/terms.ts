@@ -277,7 +277,8 @@ function addChain(
         const path = conjugated.has(other) ? 'j' : 's';
         const fall = FALL_OFF ** (d - 1);
         // What sits on a site drives it hard; what acts from farther away does so in every family alike.
-        const share = d <= 2 ? 1 : Math.min(1, FAR_RESPONSE / answer);
+        const direct = d === 1 || (d === 2 && conjugated.has(other));
+        const share = direct ? 1 : Math.min(1, FAR_RESPONSE / answer);
         add(`chain:*.${kinds[other]}`, 3 * fall * answer * share);
         add(`chain:${series}.${kinds[other]}`, 3 * fall * share);
         add(`chain${path}:${series}.${d}.${kinds[other]}`, share);
