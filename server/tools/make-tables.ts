@@ -8,9 +8,10 @@ import { existsSync, mkdirSync, readFileSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { buildGraph } from '../src/chemistry/build-graph.ts';
 import { neutralForm } from '../src/chemistry/neutral.ts';
+import { siteNames } from '../src/chemistry/site-names.ts';
 import { parseSmarts } from '../src/chemistry/smarts.ts';
 import { readSmiles } from '../src/chemistry/smiles.ts';
-import { canonicalKey, molarMass, symmetryClasses } from '../src/chemistry/toolkit.ts';
+import { canonicalKey, molarMass } from '../src/chemistry/toolkit.ts';
 import { foldName } from '../src/tables/names.ts';
 import { type Cell, type Row, readTable, TableFault } from './read-table.ts';
 
@@ -94,19 +95,19 @@ function identity(smiles: Cell): { key: string | null; mass: number | null } {
   return { key: keys.join(' '), mass: molarMass(graph) };
 }
 
-/** Key of the neutral molecule of a measured row and the symmetry classes of its mapped atoms. */
+/** Key of the neutral molecule of a measured row and the names of its mapped atoms. */
 function measuredSite(smiles: string): { key: string; atoms: readonly number[]; classes: readonly number[] } {
   const neutral = neutralForm(graphOf(smiles));
   const fragment = neutral.graph.fragments.find(
     (atoms) => !atoms.every((atom) => neutral.absorbed.has(atom)),
   )!;
-  const classes = symmetryClasses(neutral.graph, fragment);
+  const names = siteNames(neutral.graph, fragment);
   const atoms = neutral.graph.atoms.filter(({ mapNumber }) => mapNumber === 1).map(({ index }) => index);
   if (atoms.length === 0) throw new Error(`${smiles} marks no site with :1`);
   return {
     key: canonicalKey(neutral.graph, fragment) ?? '?',
     atoms,
-    classes: [...new Set(atoms.map((atom) => classes.get(atom) ?? -1))],
+    classes: [...new Set(atoms.flatMap((atom) => names.get(atom) ?? []))],
   };
 }
 

@@ -3,11 +3,13 @@
  *
  * Knows: couples, rows of `measured`.  Must not know: estimates, flasks, plans.
  * Invariants: what is found does not depend on how the molecule is written or charged.   (tests/chemistry/measured.test.ts)
- * A row fits a couple when the neutral molecules have one key, the sites one symmetry class, and both are acid or both base.
+ * A row fits a couple when the neutral molecules have one key, the sites one name, and both are acid or both base.
  */
 import type { MeasuredRow } from '../tables/rows.ts';
 import type { Constant, Perceived } from './couple.ts';
 import type { MeasuredConstant } from './couple-constants.ts';
+import { neutralForm } from './neutral.ts';
+import { siteNames } from './site-names.ts';
 
 export interface MeasuredTables {
   readonly measuredByKey: ReadonlyMap<string, readonly MeasuredRow[]>;
@@ -15,19 +17,20 @@ export interface MeasuredTables {
 
 /** All measured constants of a molecule, on every scale, with the index of their couple. */
 export function measuredConstants(
-  { components, couples }: Perceived,
+  { graph, components, couples }: Perceived,
   { measuredByKey }: MeasuredTables,
 ): readonly MeasuredConstant[] {
-  return components.flatMap(({ index, key, spectator }) => {
-    if (spectator || key === undefined) return [];
-    return (measuredByKey.get(key) ?? []).flatMap((row) => {
+  return components.flatMap(({ index, key, spectator, atoms }) => {
+    const rows = spectator || key === undefined ? undefined : measuredByKey.get(key);
+    if (rows === undefined || graph === null) return [];
+    const names = siteNames(neutralForm(graph).graph, atoms);
+    return rows.flatMap((row) =>
       // Equivalent atoms make one couple, unless the drawing has taken the proton from some of them only.
-      const found = couples.flatMap(({ component, kind, symmetry }, couple) => {
-        const fits = component === index && kind === row.direction && row.classes.includes(symmetry ?? -1);
+      couples.flatMap(({ component, kind, atom }, couple) => {
+        const fits = component === index && kind === row.direction && row.classes.includes(names.get(atom)!);
         return fits ? [{ couple, step: row.step, constant: constantOf(row) }] : [];
-      });
-      return found;
-    });
+      }),
+    );
   });
 }
 

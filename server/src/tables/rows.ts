@@ -282,7 +282,7 @@ export interface GroupRow extends Sourced {
 export interface MeasuredRow extends Sourced {
   readonly name: string;
   readonly smiles: string;
-  /** Key of the neutral molecule and symmetry classes of the marked atoms, made at build. */
+  /** Key of the neutral molecule and names of the marked atoms (`chemistry/site-names.ts`), made at build. */
   readonly key: string;
   readonly classes: readonly number[];
   readonly direction: 'acid' | 'base';
