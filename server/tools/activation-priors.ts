@@ -9,7 +9,7 @@ export type Prior = readonly [number, number, number?];
 
 export const PARENTS: Readonly<Record<Centre, number>> = { C: 56, N: 41 };
 export const LIMIT_START = 50;
-export const TOTAL_START = 120;
+export const SCREENING_START = 150;
 
 export const PRIORS: Readonly<Record<Centre, Readonly<Record<string, Prior>>>> = {
   C: {
@@ -23,6 +23,7 @@ export const PRIORS: Readonly<Record<Centre, Readonly<Record<string, Prior>>>> =
     'aryl-ester': [8, 28],
     lactone: [7, 30],
     amide: [4, 22],
+    imide: [6, 27],
     carboxyl: [5, 25],
     thioester: [6, 33],
     thioamide: [6, 34],
@@ -64,7 +65,9 @@ export const PRIORS: Readonly<Record<Centre, Readonly<Record<string, Prior>>>> =
     boryl: [3, 20],
     aryl: [2, 12.5, 18],
     'fused-aryl': [0, 3],
-    'para-acceptor': [0, 0, 12],
+    'para-nitro': [0, 0, 40],
+    'para-carbonyl': [0, 0, 25],
+    'para-acceptor': [0, 0, 3],
     azinyl1: [4, 20, 18],
     azinyl2: [6, 26, 18],
     'azinyl-meta': [4, 14, 18],
@@ -131,7 +134,9 @@ export const PRIORS: Readonly<Record<Centre, Readonly<Record<string, Prior>>>> =
     silyl: [4, 2],
     aryl: [3, 8, 8],
     'fused-aryl': [0, 2],
-    'para-acceptor': [0, 0, 3],
+    'para-nitro': [0, 0, 5],
+    'para-carbonyl': [0, 0, 3],
+    'para-acceptor': [0, 0, 1],
     azinyl1: [4, 11, 8],
     azinyl2: [5, 15, 8],
     'azinyl-meta': [4, 9, 8],

@@ -27,6 +27,8 @@ const MODIFIERS = new Set([
   'beta-hetero',
   'beta-aryl',
   'fused-aryl',
+  'para-nitro',
+  'para-carbonyl',
   'para-acceptor',
   'acyl-fluorine',
   'crowded',
@@ -36,6 +38,7 @@ const MODIFIERS = new Set([
   'tied-diaryl',
   'aromatic-anion',
 ]);
+const ACCEPTORS_OF_N = ['C=O', 'S(=O)2'];
 const CARBONYLS = new Set([
   'acyl',
   'aroyl',
@@ -44,6 +47,7 @@ const CARBONYLS = new Set([
   'aryl-ester',
   'lactone',
   'amide',
+  'imide',
   'lactam',
   'thioester',
 ]);
@@ -85,7 +89,7 @@ export function activatorsOf(graph: Graph, site: number, substituents: Substitue
     const name = branchName(graph, root, site);
     const sigma = sigmaBehind(graph, site, root, name, substituents);
     add(name, sigma.all);
-    if (sigma.conjugated !== 0) add('para-acceptor', sigma.conjugated);
+    for (const [acceptor, share] of sigma.conjugated) add(acceptor, share);
     for (const extra of extras(graph, root, site, name)) add(extra);
   }
   if (tied === null && isCrowded(counts)) add('crowded');
@@ -182,13 +186,26 @@ function carbonName(graph: Graph, root: number, from: number): string {
       if (0 < hetero.hydrogens) return 'carboxyl';
       return together ? 'lactone' : arylated ? 'aryl-ester' : 'ester';
     case 'N':
-      // Beside carbon a ring changes nothing that its own rows do not count; an imide's or urea's nitrogen feels it.
-      return together && graph.atoms[from]!.element === 'N' ? 'lactam' : 'amide';
+      return amideName(graph, root, hetero.index, from, together);
     case 'S':
       return 'thioester';
     default:
       return 'acyl-halide';
   }
+}
+
+/** A nitrogen that serves two carbonyl groups gives each less; in a ring with an acidic nitrogen it is held in place. */
+function amideName(graph: Graph, root: number, nitrogen: number, from: number, together: boolean): string {
+  const kinds = atomKinds(graph);
+  const shared = graph.atoms[nitrogen]!.neighbours.some(
+    (next) =>
+      next !== root &&
+      next !== from &&
+      !graph.atoms[next]!.aromatic &&
+      ACCEPTORS_OF_N.some((kind) => kinds[next]!.startsWith(kind)),
+  );
+  if (graph.atoms[from]!.element === 'C') return shared ? 'imide' : 'amide';
+  return together ? 'lactam' : 'amide';
 }
 
 function vinylName(graph: Graph, root: number, double: number, from: number): string {
@@ -255,11 +272,11 @@ function isPerfluorinated(graph: Graph, index: number): boolean {
 
 interface ArylSigma {
   readonly all: number;
-  /** The part that direct conjugation with the site adds. */
-  readonly conjugated: number;
+  /** The part that direct conjugation with the site adds, by the kind of acceptor. */
+  readonly conjugated: readonly (readonly [string, number])[];
 }
 
-const NO_SIGMA: ArylSigma = { all: 0, conjugated: 0 };
+const NO_SIGMA: ArylSigma = { all: 0, conjugated: [] };
 
 /** Constants of the substituents on the arene that the branch is, or carries behind its first atom. */
 function sigmaBehind(
@@ -279,7 +296,8 @@ function sigmaBehind(
 function arylSigma(graph: Graph, site: number, root: number, substituents: Substituents): ArylSigma {
   const core = coresOf(graph, site).find(({ anchor, reach }) => anchor === root && reach === 1);
   if (core === undefined) return NO_SIGMA;
-  let [all, conjugated] = [0, 0];
+  const conjugated: [string, number][] = [];
+  let all = 0;
   for (const [atom, place] of core.places) {
     for (const next of graph.atoms[atom]!.neighbours) {
       if (core.atoms.has(next) || next === site || orderBetween(graph, atom, next) === 0) continue;
@@ -287,10 +305,17 @@ function arylSigma(graph: Graph, site: number, root: number, substituents: Subst
       const { m, p, minus } = substituents.sigmaOf(graph, next, atom);
       const through = p + minus;
       all += place === 'o' ? ORTHO * Math.max(m, through) : place === 'p' ? through : m;
-      if (CONJUGATED.has(place) && ACCEPTOR < p) conjugated += Math.max(0, minus);
+      if (CONJUGATED.has(place) && ACCEPTOR < p && 0 < minus) {
+        conjugated.push([acceptorName(atomKinds(graph)[next]!), minus]);
+      }
     }
   }
   return { all, conjugated };
+}
+
+/** Nitro and carbonyl groups take the charge over; cyano and sulfonyl groups mostly pull on it. */
+function acceptorName(kind: string): string {
+  return kind === 'NO2' ? 'para-nitro' : kind.startsWith('C=O') ? 'para-carbonyl' : 'para-acceptor';
 }
 
 function inRingWith(graph: Graph, site: number, atom: number, next: number): boolean {

@@ -1,9 +1,9 @@
 /**
  * Estimates in DMSO of carbon acids and of N–H acids whose nitrogen is no part of an aromatic ring.
  *
- * Each group on the site lowers the constant of the parent (methane, ammonia) by its field and by its resonance. The
- * resonance of all groups runs into a limit of its own, and then both together into a wider one. What a pair of groups
- * does beyond that is a row of its own.
+ * Each group on the site lowers the constant of the parent (methane, ammonia) by its resonance, which runs into a
+ * limit, and by its field, which fades as the resonance spreads the charge. What a pair of groups does beyond that is
+ * a row of its own.
  * Knows: graphs, rows of `activation`.  Must not know: measured values, flasks, plans.
  * Invariants: the estimate does not depend on how the molecule is written.   (tests/chemistry/carbon-acids.test.ts)
  * Units: pKa in DMSO at 25 °C.
@@ -34,9 +34,10 @@ export interface Activation {
 
 export interface ActivationModel {
   readonly parent: number;
-  /** What resonance alone, and what both together can reach at the most. */
+  /** What resonance can reach at the most. */
   readonly limit: number;
-  readonly total: number;
+  /** Resonance that leaves 1/e of the field: a charge spread out is pulled less. */
+  readonly screening: number;
   readonly sd: number;
   readonly groups: ReadonlyMap<string, Activation>;
 }
@@ -44,7 +45,7 @@ export interface ActivationModel {
 /** Names of the rows that are no groups. */
 export const PARENT = '(parent)';
 export const LIMIT = '(limit of resonance)';
-export const TOTAL = '(limit of all)';
+export const SCREENING = '(screening)';
 export const SPREAD = '(spread)';
 
 const CENTRES = ['C', 'N'] as const;
@@ -53,10 +54,10 @@ export type Centre = (typeof CENTRES)[number];
 const HALOGENS = new Set(['F', 'Cl', 'Br', 'I']);
 
 /** Groups seen in fewer molecules than this add to the doubt. */
-const WELL_KNOWN = 3;
-const RARE_SD = 1.2;
+export const WELL_KNOWN = 4;
+const RARE_SD = 2;
 /** A group that no molecule of the fit carries counts as its prior says, with this doubt. */
-const UNSEEN_SD = 2.5;
+const UNSEEN_SD = 3;
 
 interface Prepared {
   readonly models: ReadonlyMap<string, ActivationModel>;
@@ -91,7 +92,7 @@ export function estimateNonAqueous(
 /** pKa in DMSO of a site with these groups; every group must have a row. */
 export function activatedValue(
   activators: readonly Activator[],
-  { parent, limit, total, groups }: ActivationModel,
+  { parent, limit, screening, groups }: ActivationModel,
 ): number {
   let [field, resonance] = [0, 0];
   for (const { name, count, sigma } of activators) {
@@ -100,7 +101,8 @@ export function activatedValue(
     resonance += group.resonance * count + group.sigma * sigma;
   }
   const together = pairsOf(activators).reduce((sum, name) => sum + (groups.get(name)?.field ?? 0), 0);
-  return parent - saturated(field + saturated(resonance, limit), total) - together;
+  const held = field * Math.exp(-Math.max(0, resonance) / screening);
+  return parent - held - saturated(resonance, limit) - together;
 }
 
 /** Whether nothing but halogens stands there: what haloforms do, no other acid foretells. */
@@ -154,7 +156,7 @@ export function readModel(rows: readonly ActivationRow[], centre: Centre): Activ
   return {
     parent: special(PARENT),
     limit: special(LIMIT),
-    total: special(TOTAL),
+    screening: special(SCREENING),
     sd: special(SPREAD),
     groups: new Map(
       groups.map(({ name, field, resonance, sigma, n }) => [name, { field, resonance, sigma, n }]),
