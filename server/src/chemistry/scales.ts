@@ -34,6 +34,9 @@ const BASE_SLOPE = 1;
 const MOST_HOPS = 3;
 const NOTHING: readonly ScaleRow[] = [];
 
+/** What decides which lines hold for a couple. */
+export type Site = Pick<Couple, 'family' | 'group' | 'kind'>;
+
 /** A line as it is walked, forwards or backwards. */
 interface Link {
   readonly from: ScaleId;
@@ -55,12 +58,7 @@ const REMEMBERED_WAYS = 500;
  *
  * @param site the surer of its group's and its family's line is taken, and that of all acids or bases where there is neither
  */
-export function carry(
-  constant: Constant,
-  site: Pick<Couple, 'family' | 'group' | 'kind'>,
-  to: ScaleId,
-  tables: ScaleTables,
-): Constant | null {
+export function carry(constant: Constant, site: Site, to: ScaleId, tables: ScaleTables): Constant | null {
   if (constant.scale === to) return constant;
   const way = wayBetween(constant.scale, to, site, tables);
   if (way.length === 0) return null;
@@ -68,12 +66,7 @@ export function carry(
 }
 
 /** What carrying costs in sd for a family, in the middle of its lines; null where no line leads there. */
-export function scaleDistance(
-  from: ScaleId,
-  to: ScaleId,
-  site: Pick<Couple, 'family' | 'group' | 'kind'>,
-  tables: ScaleTables,
-): number | null {
+export function scaleDistance(from: ScaleId, to: ScaleId, site: Site, tables: ScaleTables): number | null {
   if (from === to) return 0;
   const way = wayBetween(from, to, site, tables);
   if (way.length === 0) return null;
@@ -114,13 +107,8 @@ function familyName({ family }: ScaleRow): string {
   return family === ANY_ACID ? 'all acids' : family === ANY_BASE ? 'all bases' : family;
 }
 
-/** The links of the way with the least doubt, at most three; empty where there is none. */
-function wayBetween(
-  from: ScaleId,
-  to: ScaleId,
-  site: Pick<Couple, 'family' | 'group' | 'kind'>,
-  tables: ScaleTables,
-): readonly Link[] {
+/** The links of the best way, at most three; empty where there is none. There and back is one way. */
+function wayBetween(from: ScaleId, to: ScaleId, site: Site, tables: ScaleTables): readonly Link[] {
   let known = ways.get(tables);
   if (known === undefined) {
     known = boundedCache(REMEMBERED_WAYS);
@@ -129,41 +117,57 @@ function wayBetween(
   const key = `${from}\0${to}\0${site.family}\0${site.group}\0${site.kind}`;
   let way = known.get(key);
   if (way === undefined) {
-    way = findWay(from, to, site, tables);
+    way = from < to ? findWay(from, to, site, tables) : findWay(to, from, site, tables).map(turned).reverse();
     known.set(key, way);
   }
   return way;
 }
 
-function findWay(
-  from: ScaleId,
-  to: ScaleId,
-  site: Pick<Couple, 'family' | 'group' | 'kind'>,
-  tables: ScaleTables,
-): readonly Link[] {
+interface Way {
+  readonly links: readonly Link[];
+  readonly general: number;
+  readonly sd: number;
+}
+
+/** Of all ways that with the fewest lines of all acids or all bases, then the shortest, then the surest. */
+function findWay(from: ScaleId, to: ScaleId, site: Site, tables: ScaleTables): readonly Link[] {
   const links = scaleIds(tables).flatMap((scale) => linksFrom(scale, site, tables));
-  let best: { way: readonly Link[]; sd: number } = { way: [], sd: Infinity };
-  const walk = (scale: ScaleId, way: readonly Link[], sd: number) => {
+  let best: Way | null = null;
+  const walk = (scale: ScaleId, way: Way) => {
     if (scale === to) {
-      if (sd < best.sd) best = { way, sd };
+      if (best === null || isBetter(way, best)) best = way;
       return;
     }
-    if (way.length === MOST_HOPS) return;
+    if (way.links.length === MOST_HOPS) return;
     for (const link of links) {
-      if (link.from !== scale || link.to === from || way.some((one) => one.from === link.to)) continue;
-      walk(link.to, [...way, link], Math.hypot(sd * Math.max(1, link.slope), link.sd));
+      if (link.from !== scale || link.to === from || way.links.some((one) => one.from === link.to)) continue;
+      walk(link.to, {
+        links: [...way.links, link],
+        general: way.general + (isGeneral(link.row) ? 1 : 0),
+        sd: Math.hypot(way.sd * Math.max(1, link.slope), link.sd),
+      });
     }
   };
-  walk(from, [], 0);
-  return best.way;
+  walk(from, { links: [], general: 0, sd: 0 });
+  return (best as Way | null)?.links ?? [];
+}
+
+function isBetter(one: Way, other: Way): boolean {
+  if (one.general !== other.general) return one.general < other.general;
+  if (one.links.length !== other.links.length) return one.links.length < other.links.length;
+  return one.sd < other.sd;
+}
+
+function isGeneral({ family }: ScaleRow): boolean {
+  return family === ANY_ACID || family === ANY_BASE;
+}
+
+function turned({ from, row }: Link): Link {
+  return row.from === from ? backwards(row) : forwards(row);
 }
 
 /** The lines that leave a scale, one for each scale that they reach. */
-function linksFrom(
-  scale: ScaleId,
-  { family, group, kind }: Pick<Couple, 'family' | 'group' | 'kind'>,
-  tables: ScaleTables,
-): Link[] {
+function linksFrom(scale: ScaleId, { family, group, kind }: Site, tables: ScaleTables): Link[] {
   const rows = rowsByScale(tables).get(scale) ?? NOTHING;
   const general = kind === 'acid' ? ANY_ACID : ANY_BASE;
   const best = new Map<ScaleId, ScaleRow>();
@@ -171,7 +175,7 @@ function linksFrom(
     if (row.family !== general && row.family !== family && row.family !== group) continue;
     const other = row.from === scale ? row.to : row.from;
     const known = best.get(other);
-    const doubt = (one: ScaleRow) => (one.family === general ? Infinity : one.sd);
+    const doubt = (one: ScaleRow) => (isGeneral(one) ? Infinity : one.sd);
     if (known === undefined || doubt(row) < doubt(known)) best.set(other, row);
   }
   return [...best.values()].map((row) => (row.from === scale ? forwards(row) : backwards(row)));
