@@ -4,8 +4,8 @@
  * Knows: graphs and the rules of `groups`.  Must not know: constants, flasks, plans.
  * Invariants:
  *  1. Couples depend on the molecule, not on how it is written or charged.   (tests/chemistry/perceive.test.ts)
- *  2. A heteroatom with a proton, or with a lone pair that takes one, has a couple or stands in `uncovered`.
- *  3. Work is bounded by the size of the text; larger molecules get a problem instead of couples.
+ *  2. A heteroatom with a proton, or with a lone pair that takes one, has a couple or stands in `uncovered`.   (same; tests/chemistry/coverage.test.ts)
+ *  3. Work is bounded by the size of the text; larger molecules get a problem instead of couples.   (same)
  */
 import { boundedCache } from '../tables/cache.ts';
 import type { GroupRow } from '../tables/rows.ts';
