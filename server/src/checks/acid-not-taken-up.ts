@@ -2,6 +2,7 @@
 import { constantsIn } from '../chemistry/constants.ts';
 import { perceive } from '../chemistry/perceive.ts';
 import { solveFlask } from '../flask/solve.ts';
+import type { Contents, Ingredient } from '../flask/state.ts';
 import { defineCheck } from './define.ts';
 
 export default defineCheck({
@@ -12,7 +13,8 @@ export default defineCheck({
     'The acid that a conversion or an ammonium salt brings is not taken up, and the amine waits as its salt.',
   why: 'A protonated amine is no nucleophile; the conversion stops half way.',
   remedy: 'Charge at least one equivalent of base for each equivalent of acid set free and for each salt.',
-  silentWhen: 'Where less than half of the nitrogen nucleophile is protonated.',
+  silentWhen:
+    'Where less than half of the nitrogen nucleophile is protonated, and where other bases cover all the acid: the exchange between amines is fast.',
   sources: ['common-practice'],
   *inStep({ conversions, tables }) {
     for (const { statement, before, conversion } of conversions) {
@@ -54,6 +56,7 @@ export default defineCheck({
       if (
         couple === undefined ||
         couple.protonated < 0.5 ||
+        released + acidOfSalt(one) < uptakeOf(before, one) ||
         (conversion.acidReleased === 0 && released === 0)
       )
         continue;
@@ -65,3 +68,28 @@ export default defineCheck({
     }
   },
 });
+
+/** mol of strong acid that a salt of the amine brings along. */
+function acidOfSalt({ molecule, mol }: Ingredient): number {
+  const held =
+    molecule?.couples.filter(({ family, holdsProton }) => family === 'mineral-acid' && holdsProton) ?? [];
+  return held.length * mol;
+}
+
+/** mol of acid that the bases of the flask take up beside the amine itself. */
+function uptakeOf({ ingredients }: Contents, amine: Ingredient): number {
+  return ingredients.reduce((sum, { id, reagent, mol, role }) => {
+    const isBase =
+      role !== 'solvent' && role !== 'inert' && (reagent?.roles.some((own) => BASES.has(own)) ?? false);
+    return id !== amine.id && isBase ? sum + mol * (reagent?.protonCapacity ?? 1) : sum;
+  }, 0);
+}
+
+/** Roles of reagents that take up an acid set free. */
+const BASES: ReadonlySet<string> = new Set([
+  'amine-base',
+  'solid-base',
+  'carbonate',
+  'hydroxide',
+  'alkoxide',
+]);

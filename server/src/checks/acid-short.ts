@@ -16,8 +16,10 @@ export default defineCheck({
   *inStep(facts) {
     for (const { fact, verdict, kind } of judgedTransfers(facts)) {
       if (kind !== 'short' || fact.statement.keyword !== 'protonate') continue;
-      const acting = facts.additions.find(
-        ({ ingredient }) => ingredient.id === (verdict.broughtBy ?? verdict.partner?.ingredient),
+      const id = verdict.broughtBy ?? verdict.partner?.ingredient;
+      // Half way, the compound's own ion may be all that is left to act; the acid that was charged is what falls short.
+      const acting = facts.additions.find(({ ingredient }) =>
+        id === fact.ingredient?.id ? ingredient.role === 'acid' : ingredient.id === id,
       );
       const statement = acting?.statement;
       const range =
