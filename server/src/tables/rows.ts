@@ -113,12 +113,17 @@ export interface ReagentRow extends Sourced {
 /** Two things that must not meet, or one thing that must not be made; a caution never claims that anything is safe. */
 export interface CautionRow extends Sourced {
   readonly id: string;
-  readonly check: 'toxic-gas' | 'runaway-pair';
-  /** `reagent:NAME`, `role:ROLE`, `solvent:NAME` or `kind:KIND` of a solvent, joined with ` | ` for "or"; empty where `group` decides. */
+  readonly check: 'toxic-gas' | 'gas-release' | 'runaway-pair' | 'skin-carrier';
+  /** `reagent:NAME`, `role:ROLE`, `group:SMARTS`, `solvent:NAME` or `kind:KIND` of a solvent, joined with ` | ` for "or"; empty where `group` decides. */
   readonly first: string;
   readonly second: string;
   /** Group whose protonated form leaves as a gas. */
   readonly group: string;
+  /** SMILES of the gas. */
+  readonly gas: string | null;
+  /** Its pKa in water; the caution speaks below this plus the margin. */
+  readonly gasValue: number | null;
+  readonly gasMargin: number | null;
   /** °C from which the pair is a danger. */
   readonly aboveTemperature: number | null;
   readonly hazard: string;
@@ -134,14 +139,14 @@ export interface LimitRow extends Sourced {
   readonly what: string;
 }
 
-/** A protecting or sensitive group and where the trade holds it safe. */
+/** A protecting or sensitive group and between which pH in water the trade holds it safe. */
 export interface StabilityRow extends Sourced {
   readonly id: string;
   readonly name: string;
   readonly smarts: string;
   readonly pattern: unknown;
-  readonly lowestPH: number | null;
-  readonly highestPH: number | null;
+  readonly lowest: number | null;
+  readonly highest: number | null;
   /** °C up to which the range above holds. */
   readonly upTo: number | null;
   /** Reagent roles or names that take it off. */
