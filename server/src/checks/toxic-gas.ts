@@ -33,6 +33,8 @@ export default defineCheck({
           ingredients.some((one) => isTriggered(row.first, one)) &&
           ingredients.some((one) => isTriggered(row.second, one));
         if (gas === undefined && !pair) continue;
+        if (row.aboveTemperature !== null && contents.temperature - ZERO_CELSIUS < row.aboveTemperature)
+          continue;
         said.add(row.id);
         const amount =
           gas === undefined
@@ -48,3 +50,5 @@ export default defineCheck({
 
 /** Share that has to be protonated before the caution speaks. */
 const LEAST = 0.05;
+/** K */
+const ZERO_CELSIUS = 273.15;
