@@ -1,7 +1,7 @@
 /** The base does not cover the intended sites. */
 
 import { defineCheck } from './define.ts';
-import { figuresOf, judgedTransfers, nameOf } from './verdicts.ts';
+import { reportShort } from './verdicts.ts';
 
 export default defineCheck({
   name: 'base-short',
@@ -13,25 +13,5 @@ export default defineCheck({
     'Charge at least one equivalent of base for each site, and one more for every site that goes first.',
   silentWhen: 'Catalytic amounts where a conversion gives the base back.',
   sources: ['common-practice'],
-  *inStep(facts) {
-    for (const { fact, verdict, kind } of judgedTransfers(facts)) {
-      if (kind !== 'short' || fact.statement.keyword !== 'deprotonate') continue;
-      const id = verdict.broughtBy ?? verdict.partner?.ingredient;
-      // Half way, the compound's own ion may be all that is left to act; the base that was charged is what falls short.
-      const acting = facts.additions.find(({ ingredient }) =>
-        id === fact.ingredient?.id ? ingredient.role === 'base' : ingredient.id === id,
-      );
-      const statement = acting?.statement;
-      const range =
-        statement != null && 'amount' in statement && statement.amount.range !== null
-          ? statement.amount.range
-          : (acting?.range ?? fact.statement.range);
-      yield {
-        range,
-        message: `${verdict.capacity.toFixed(2)} equiv of base for one equiv of the ${nameOf(facts, verdict.site)}: ${Math.round(100 * (1 - verdict.capacity))} % of it stays as it is.`,
-        confidence: 1 - verdict.probability < 0.5 ? verdict.probability : 0.9,
-        figures: figuresOf(verdict),
-      };
-    }
-  },
+  inStep: (facts) => reportShort(facts, 'deprotonate'),
 });

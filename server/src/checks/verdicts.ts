@@ -7,7 +7,7 @@
 import { constantsIn } from '../chemistry/constants.ts';
 import { firstSites, siteOrder } from '../flask/fates.ts';
 import type { Site, Verdict } from '../flask/state.ts';
-import type { Range } from '../route/plan.ts';
+import type { Range, TransferStatement } from '../route/plan.ts';
 import type { Report } from './define.ts';
 import type { StepFacts, TransferFact } from './facts.ts';
 import type { Related, Severity } from './finding.ts';
@@ -184,4 +184,26 @@ export function reportKind(
       related: placesOf(facts, judged),
       ...write(judged),
     }));
+}
+
+/** A finding at the amount of the base (acid) for each transfer that it does not cover. */
+export function* reportShort(facts: StepFacts, keyword: TransferStatement['keyword']): Iterable<Report> {
+  const role = keyword === 'deprotonate' ? 'base' : 'acid';
+  for (const { fact, verdict, kind } of judgedTransfers(facts)) {
+    if (kind !== 'short' || fact.statement.keyword !== keyword) continue;
+    const id = verdict.broughtBy ?? verdict.partner?.ingredient;
+    // Half way, the compound's own ion may be all that is left to act; what was charged is what falls short.
+    const acting = facts.additions.find(({ ingredient }) =>
+      id === fact.ingredient?.id ? ingredient.role === role : ingredient.id === id,
+    );
+    const statement = acting?.statement;
+    const amount = statement != null && 'amount' in statement ? statement.amount.range : null;
+    yield {
+      range: amount ?? acting?.range ?? fact.statement.range,
+      message: `${verdict.capacity.toFixed(2)} equiv of ${role} for one equiv of the ${nameOf(facts, verdict.site)}: ${Math.round(100 * (1 - verdict.capacity))} % of it stays as it is.`,
+      // What the transfer itself leaves open is not the amount's fault.
+      confidence: 1 - verdict.probability,
+      figures: figuresOf(verdict),
+    };
+  }
 }
