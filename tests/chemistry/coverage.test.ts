@@ -4,15 +4,7 @@ import { join } from 'node:path';
 import { parse } from 'csv-parse/sync';
 import { expect, test } from 'vitest';
 import { perceive } from '../../server/src/chemistry/perceive.ts';
-import type { GroupRow, MeasuredRow, ReagentRow, SolventRow } from '../../server/src/tables/rows.ts';
-
-const tables = JSON.parse(readFileSync('server/generated/tables.json', 'utf8')) as {
-  version: string;
-  groups: GroupRow[];
-  solvents: SolventRow[];
-  reagents: ReagentRow[];
-  measured: MeasuredRow[];
-};
+import { tables } from '../support/tables.ts';
 
 test.each(['solvents', 'reagents', 'measured'] as const)('every substance of %s is covered', (name) => {
   const texts = tables[name].flatMap(({ smiles }) => (smiles === null ? [] : [smiles]));

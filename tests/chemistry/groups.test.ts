@@ -3,12 +3,8 @@ import { readFileSync } from 'node:fs';
 import { parse } from 'csv-parse/sync';
 import { expect, test } from 'vitest';
 import { perceive } from '../../server/src/chemistry/perceive.ts';
-import type { GroupRow } from '../../server/src/tables/rows.ts';
+import { tables } from '../support/tables.ts';
 
-const tables = JSON.parse(readFileSync('server/generated/tables.json', 'utf8')) as {
-  version: string;
-  groups: GroupRow[];
-};
 const { groups } = tables;
 const nearMisses = parse(readFileSync('tests/chemistry/near-misses.csv', 'utf8'), { columns: true }) as {
   group: string;

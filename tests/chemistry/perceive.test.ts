@@ -1,17 +1,11 @@
 /** Molecules and their couples, however they are written or charged, and whatever is thrown at the reader. */
-import { readFileSync } from 'node:fs';
 import { expect, test } from 'vitest';
 import { buildGraph } from '../../server/src/chemistry/build-graph.ts';
 import type { Structure } from '../../server/src/chemistry/molecule.ts';
 import { perceive } from '../../server/src/chemistry/perceive.ts';
 import { readSmiles } from '../../server/src/chemistry/smiles.ts';
 import { writeSmiles } from '../../server/src/chemistry/write-smiles.ts';
-import type { GroupRow } from '../../server/src/tables/rows.ts';
-
-const tables = JSON.parse(readFileSync('server/generated/tables.json', 'utf8')) as {
-  version: string;
-  groups: GroupRow[];
-};
+import { tables } from '../support/tables.ts';
 
 const see = (smiles: string) => perceive(smiles, tables);
 

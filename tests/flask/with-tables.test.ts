@@ -1,14 +1,12 @@
 /** The flask over the project's own tables: everyday transfers and standard buffers, from names to verdicts. */
-import { readFileSync } from 'node:fs';
 import { expect, test } from 'vitest';
 import { perceive } from '../../server/src/chemistry/perceive.ts';
 import { judgeTransfer } from '../../server/src/flask/judge.ts';
 import { solveFlask } from '../../server/src/flask/solve.ts';
 import type { Contents, Ingredient } from '../../server/src/flask/state.ts';
 import { foldName } from '../../server/src/tables/names.ts';
-import { readTables } from '../../server/src/tables/tables.ts';
+import { tables } from '../support/tables.ts';
 
-const tables = readTables(JSON.parse(readFileSync('server/generated/tables.json', 'utf8')));
 const plain = { volume: null, reagent: null, solvent: null, assumed: false, qualifier: null } as const;
 
 function solvent(name: string, id: number): Ingredient {

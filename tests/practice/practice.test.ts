@@ -1,12 +1,11 @@
 /** Sound practice stays silent, its flawed twins speak. */
 import { readFileSync } from 'node:fs';
 import { expect, test } from 'vitest';
-import built from '../../server/generated/tables.json';
 import { analyseNow, createAnalyser } from '../../server/src/answers/analyse.ts';
-import { readTables } from '../../server/src/tables/tables.ts';
 import { differences, readFixtures } from '../support/fixtures.ts';
+import { tables } from '../support/tables.ts';
 
-const analyser = createAnalyser(readTables(built));
+const analyser = createAnalyser(tables);
 
 for (const file of ['sound-1', 'sound-2', 'flawed']) {
   const fixtures = readFixtures(readFileSync(new URL(`./${file}.md`, import.meta.url), 'utf8'));

@@ -48,6 +48,12 @@ interface Built {
   readonly sources: readonly SourceRow[];
 }
 
+/** A table as the build writes it: the names of the columns once, then the cells of each row in their order. */
+export interface FoldedTable {
+  readonly columns: readonly string[];
+  readonly rows: readonly (readonly unknown[])[];
+}
+
 export interface Tables extends Built {
   readonly reagentByName: ReadonlyMap<string, ReagentRow>;
   readonly solventByName: ReadonlyMap<string, SolventRow>;
@@ -64,7 +70,7 @@ export interface Tables extends Built {
 
 /** Indexes the generated tables. */
 export function readTables(json: unknown): Tables {
-  const built = json as Built;
+  const built = unfolded(json as Readonly<Record<string, unknown>>);
   const nameByFolded = new Map<string, string>();
   let longestName = 1;
   const byName = <Row extends { name: string; synonyms: readonly string[] }>(rows: readonly Row[]) => {
@@ -104,4 +110,21 @@ export function readTables(json: unknown): Tables {
     groupById: new Map(built.groups.map((row) => [row.id, row])),
     sourceById: new Map(built.sources.map((row) => [row.id, row])),
   };
+}
+
+function unfolded(json: Readonly<Record<string, unknown>>): Built {
+  const tables = Object.entries(json).map(([name, table]) => [name, isFolded(table) ? rowsOf(table) : table]);
+  return Object.fromEntries(tables) as Built;
+}
+
+function isFolded(table: unknown): table is FoldedTable {
+  return typeof table === 'object' && table !== null && 'columns' in table;
+}
+
+function rowsOf({ columns, rows }: FoldedTable): unknown[] {
+  return rows.map((cells) => {
+    const row: Record<string, unknown> = {};
+    for (let place = 0; place < columns.length; place++) row[columns[place]!] = cells[place];
+    return row;
+  });
 }
