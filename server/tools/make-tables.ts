@@ -13,6 +13,7 @@ import { parseSmarts } from '../src/chemistry/smarts.ts';
 import { readSmiles } from '../src/chemistry/smiles.ts';
 import { canonicalKey, molarMass } from '../src/chemistry/toolkit.ts';
 import { foldName } from '../src/tables/names.ts';
+import type { CautionRow, ChoiceRow, Trigger } from '../src/tables/rows.ts';
 import type { FoldedTable } from '../src/tables/tables.ts';
 import { type Cell, type Row, readTable, TableFault } from './read-table.ts';
 
@@ -34,7 +35,11 @@ const TABLES = [
   'enthalpies',
   'gases',
   'hydrides',
+  'choices',
+  'electrophiles',
 ] as const;
+
+const TRIGGER_KINDS = new Set(['reagent', 'role', 'solvent', 'kind', 'group']);
 
 interface SourceEntry {
   readonly id: string;
@@ -63,6 +68,8 @@ function write(root: string): void {
     );
   }
   refuseSharedNames(tables as { solvents: Named[]; reagents: Named[] });
+  refuseUnknownTriggers(tables as unknown as TriggeredTables);
+  refuseUnknownChoices(tables as unknown as ChosenTables);
   for (const name of TABLES) tables[name] = folded(tables[name] as Record<string, unknown>[]);
   const text = JSON.stringify(tables);
   const version = createHash('sha256').update(text).digest('hex').slice(0, 12);
@@ -83,6 +90,8 @@ function complete(table: string, { line, cells }: Row): Record<string, unknown> 
     if (typeof cells.smarts === 'string') row.pattern = parseSmarts(cells.smarts);
     if (table === 'solvents' || table === 'reagents') Object.assign(row, identity(cells.smiles ?? null));
     if (table === 'reagents' && cells.molarMass === null) row.molarMass = row.mass;
+    if (table === 'cautions')
+      Object.assign(row, { first: triggersOf(cells.first), second: triggersOf(cells.second) });
     if (table === 'measured') Object.assign(row, measuredSite(String(cells.smiles)));
   } catch (error) {
     throw new TableFault(`${table}.csv:${line}: ${(error as Error).message}`);
@@ -91,6 +100,17 @@ function complete(table: string, { line, cells }: Row): Record<string, unknown> 
   // All terms come from one fit; naming its sources thousands of times would make up a tenth of the bundle.
   if (table === 'terms') return { name: row.name, value: row.value, n: row.n };
   return row;
+}
+
+/** `reagent:NAME | role:ROLE | group:SMARTS …`, the patterns parsed. */
+function triggersOf(cell: Cell | undefined): Trigger[] {
+  if (typeof cell !== 'string' || cell === '') return [];
+  return cell.split(' | ').map((part) => {
+    const place = part.indexOf(':');
+    const [kind, name] = [part.slice(0, place), part.slice(place + 1)];
+    if (!TRIGGER_KINDS.has(kind)) throw new Error(`"${part}" is no trigger`);
+    return { kind: kind as Trigger['kind'], name, pattern: kind === 'group' ? parseSmarts(name) : null };
+  });
 }
 
 /** Key of a substance: the keys of its fragments in order, metals and counterions included. */
@@ -127,6 +147,50 @@ function graphOf(smiles: string) {
   const built = buildGraph(structure);
   if (built.graph === undefined) throw new Error(`${smiles}: ${built.problem.message}`);
   return built.graph;
+}
+
+interface TriggeredTables {
+  readonly solvents: readonly { readonly name: string; readonly kind: string }[];
+  readonly reagents: readonly { readonly name: string; readonly roles: readonly string[] }[];
+  readonly cautions: readonly Pick<CautionRow, 'id' | 'first' | 'second'>[];
+}
+
+/** A caution that names what no table holds could never speak. */
+function refuseUnknownTriggers({ solvents, reagents, cautions }: TriggeredTables): void {
+  const known: Record<Trigger['kind'], ReadonlySet<string> | null> = {
+    reagent: new Set(reagents.map(({ name }) => name)),
+    role: new Set(reagents.flatMap(({ roles }) => roles)),
+    solvent: new Set(solvents.map(({ name }) => name)),
+    kind: new Set(solvents.map(({ kind }) => kind)),
+    group: null,
+  };
+  const faults = cautions.flatMap(({ id, first, second }) =>
+    [...first, ...second]
+      .filter(({ kind, name }) => known[kind]?.has(name) === false)
+      .map(({ kind, name }) => `cautions.csv: ${id} speaks of ${kind}:${name}, which no table holds`),
+  );
+  if (faults.length !== 0) throw new TableFault(faults.join('\n'));
+}
+
+interface ChosenTables extends TriggeredTables {
+  readonly choices: readonly Pick<ChoiceRow, 'what' | 'usedIn' | 'attacks'>[];
+  readonly electrophiles: readonly { readonly id: string }[];
+}
+
+/** The same for what may be proposed. */
+function refuseUnknownChoices({ solvents, reagents, choices, electrophiles }: ChosenTables): void {
+  const known = new Set([
+    ...reagents.flatMap(({ name, roles }) => [`reagent:${name}`, ...roles.map((role) => `role:${role}`)]),
+    ...solvents.map(({ name }) => `solvent:${name}`),
+  ]);
+  const places = new Set(solvents.flatMap(({ name, kind }) => [name, kind]));
+  const groups = new Set(electrophiles.map(({ id }) => id));
+  const faults = choices.flatMap(({ what, usedIn, attacks }) => [
+    ...(known.has(what) ? [] : [`choices.csv: ${what} is in no table`]),
+    ...usedIn.filter((place) => !places.has(place)).map((place) => `choices.csv: ${what} in unknown ${place}`),
+    ...attacks.filter((id) => !groups.has(id)).map((id) => `choices.csv: ${what} attacks unknown ${id}`),
+  ]);
+  if (faults.length !== 0) throw new TableFault(faults.join('\n'));
 }
 
 interface Named {

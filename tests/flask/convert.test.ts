@@ -1,12 +1,14 @@
 import { expect, test } from 'vitest';
 import { buildGraph } from '../../server/src/chemistry/build-graph.ts';
 import type { Perceived } from '../../server/src/chemistry/couple.ts';
+import { perceive } from '../../server/src/chemistry/perceive.ts';
 import { readSmiles } from '../../server/src/chemistry/smiles.ts';
 import { elementCounts } from '../../server/src/chemistry/toolkit.ts';
-import { balanceConversion } from '../../server/src/flask/convert.ts';
+import { balanceConversion, protonsWanted } from '../../server/src/flask/convert.ts';
 import { LEAVING } from '../../server/src/flask/leaving.ts';
 import type { Ingredient } from '../../server/src/flask/state.ts';
 import type { ReagentRole, SolventRow } from '../../server/src/tables/rows.ts';
+import { tables } from '../support/tables.ts';
 import { DMF, reagentRow, THF } from './kit.ts';
 
 function read(smiles: string): Perceived {
@@ -48,6 +50,27 @@ test('the formula of each leaving molecule is that of its SMILES', () => {
   for (const { name, smiles, atoms } of LEAVING) {
     expect([name, [...elementCounts(read(smiles).graph!)].sort()]).toEqual([name, [...atoms].sort()]);
   }
+});
+
+test('the ion of each strong acid is the acid without one proton', () => {
+  for (const { name, smiles, ion, isStrongAcid } of LEAVING) {
+    expect([name, ion !== null]).toEqual([name, isStrongAcid]);
+    if (ion === null) continue;
+    const acid = new Map(elementCounts(read(smiles).graph!));
+    acid.set('H', acid.get('H')! - 1);
+    const left = [...acid].filter(([, count]) => 0 < count).sort();
+    expect([name, [...elementCounts(read(ion).graph!)].sort()]).toEqual([name, left]);
+  }
+});
+
+test.each([
+  ['[Na+].[N-]=[N+]=[N-]', 1],
+  ['[Na+].[O-]CC', 1],
+  ['Cl.NCc1ccccc1', 0],
+  ['[Cl-].[NH3+]Cc1ccccc1', 0],
+  ['CC(=O)O', 0],
+])('%s wants %i protons', (smiles, wanted) => {
+  expect(protonsWanted(perceive(smiles, tables))).toBe(wanted);
 });
 
 test.each([

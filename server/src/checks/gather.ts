@@ -8,7 +8,7 @@
 import { constantsIn } from '../chemistry/constants.ts';
 import type { Perceived } from '../chemistry/couple.ts';
 import { perceive } from '../chemistry/perceive.ts';
-import { balanceConversion, type Conversion } from '../flask/convert.ts';
+import { balanceConversion, type Conversion, protonsWanted } from '../flask/convert.ts';
 import { type Intent, judgeTransfer } from '../flask/judge.ts';
 import { solveFlask } from '../flask/solve.ts';
 import type { Contents, FlaskState, Ingredient, Role, Verdict } from '../flask/state.ts';
@@ -314,8 +314,17 @@ class Filling {
       .filter(({ role, mol }) => role === 'solvent' || 0 < mol);
     for (const { substance, count } of to)
       this.make(substance.name, this.moleculeOf(substance), extent * count, 'compound', substance);
-    for (const { name, smiles, count } of byProducts)
-      this.make(name, perceive(smiles, this.tables), extent * count, 'by-product', null);
+    let wanted = used.reduce(
+      (sum, { one, count }) => sum + count * (one.molecule === null ? 0 : protonsWanted(one.molecule)),
+      0,
+    );
+    for (const { name, smiles, ion, count } of byProducts) {
+      const asIon = ion === null ? 0 : Math.min(wanted, count);
+      wanted -= asIon;
+      if (0 < asIon) this.make(name, perceive(ion!, this.tables), extent * asIon, 'by-product', null);
+      if (asIon < count)
+        this.make(name, perceive(smiles, this.tables), extent * (count - asIon), 'by-product', null);
+    }
   }
 
   private make(

@@ -13,6 +13,7 @@ import borrowedScale from './borrowed-scale.ts';
 import budgetReached from './budget-reached.ts';
 import checkFailed from './check-failed.ts';
 import definedTwice from './defined-twice.ts';
+import gasRelease from './gas-release.ts';
 import impossibleValence from './impossible-valence.ts';
 import levelled from './levelled.ts';
 import missingAmount from './missing-amount.ts';
@@ -24,6 +25,7 @@ import pHOutOfReach from './pH-out-of-reach.ts';
 import reagentEatenByProton from './reagent-eaten-by-proton.ts';
 import runawayPair from './runaway-pair.ts';
 import siteNotFound from './site-not-found.ts';
+import skinCarrier from './skin-carrier.ts';
 import solventAttacked from './solvent-attacked.ts';
 import solventLosesProton from './solvent-loses-proton.ts';
 import solventOutOfRange from './solvent-out-of-range.ts';
@@ -52,6 +54,7 @@ export const CHECKS: readonly Check[] = [
   budgetReached,
   checkFailed,
   definedTwice,
+  gasRelease,
   impossibleValence,
   levelled,
   missingAmount,
@@ -63,6 +66,7 @@ export const CHECKS: readonly Check[] = [
   reagentEatenByProton,
   runawayPair,
   siteNotFound,
+  skinCarrier,
   solventAttacked,
   solventLosesProton,
   solventOutOfRange,

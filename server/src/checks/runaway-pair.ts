@@ -1,7 +1,6 @@
 /** Two things in one flask that run away together. */
-
+import { dangersOf } from './dangers.ts';
 import { defineCheck } from './define.ts';
-import { isTriggered } from './triggers.ts';
 
 export default defineCheck({
   name: 'runaway-pair',
@@ -13,21 +12,16 @@ export default defineCheck({
   silentWhen:
     'Pairs below the temperature at which the trade handles them; silence never means that a plan is safe.',
   sources: ['bretherick'],
-  *inStep({ moments, additions, left, tables }) {
-    for (const row of tables.cautions) {
-      if (row.check !== 'runaway-pair') continue;
-      for (const { statement, contents } of moments) {
-        const { ingredients } = contents;
-        const second = ingredients.find((one) => isTriggered(row.second, one));
-        if (second === undefined || !ingredients.some((one) => isTriggered(row.first, one))) continue;
-        if (row.aboveTemperature !== null && left.temperature - 273.15 < row.aboveTemperature) break;
-        const range =
-          additions.find(
-            (addition) => addition.statement === statement && addition.ingredient.role !== 'solvent',
-          )?.range ?? statement.range;
-        yield { range, message: `This pair can give ${row.hazard}: ${row.advice}.` };
-        break;
-      }
-    }
+  wrong: `step A
+  solvent CH2Cl2 20 mL
+  charge NaN3 10 mmol
+`,
+  right: `step A
+  solvent DMF 20 mL
+  charge NaN3 10 mmol
+`,
+  *inStep(facts) {
+    for (const { row, range } of dangersOf('runaway-pair', facts))
+      yield { range, message: `This pair can give ${row.hazard}: ${row.advice}.` };
   },
 });

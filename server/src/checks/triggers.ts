@@ -3,16 +3,24 @@
  *
  * Knows: rows and ingredients.  Must not know: checks, findings.
  */
+import { matchSites } from '../chemistry/match.ts';
+import type { Pattern } from '../chemistry/smarts.ts';
 import type { Ingredient } from '../flask/state.ts';
+import type { Trigger } from '../tables/rows.ts';
 
-/** Whether an ingredient fits any of `reagent:NAME`, `role:ROLE`, `solvent:NAME`, `kind:KIND`, joined with ` | `. */
-export function isTriggered(trigger: string, ingredient: Ingredient): boolean {
-  return trigger.split(' | ').some((part) => fits(part, ingredient));
+/** The first ingredient that fits one of the triggers and is still there; undefined without one. */
+export function triggered(
+  triggers: readonly Trigger[],
+  ingredients: readonly Ingredient[],
+): Ingredient | undefined {
+  return ingredients.find((one) => isThere(one) && triggers.some((trigger) => fits(trigger, one)));
 }
 
-function fits(part: string, { reagent, solvent, role }: Ingredient): boolean {
-  const place = part.indexOf(':');
-  const [kind, name] = [part.slice(0, place), part.slice(place + 1)];
+function isThere({ role, mol }: Ingredient): boolean {
+  return role === 'solvent' || 0 < mol;
+}
+
+function fits({ kind, name, pattern }: Trigger, { reagent, solvent, role, molecule }: Ingredient): boolean {
   switch (kind) {
     case 'reagent':
       return reagent?.name === name;
@@ -22,7 +30,7 @@ function fits(part: string, { reagent, solvent, role }: Ingredient): boolean {
       return role === 'solvent' && solvent?.name === name;
     case 'kind':
       return role === 'solvent' && solvent?.kind === name;
-    default:
-      return false;
+    case 'group':
+      return molecule?.graph != null && matchSites(molecule.graph, pattern as Pattern).length !== 0;
   }
 }

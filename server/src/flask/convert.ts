@@ -258,3 +258,16 @@ function gather(list: readonly Leaving[]): ByProduct[] {
   }
   return [...byName.values()];
 }
+
+/**
+ * Protons that a salt of an anion wants, for each mol of it: 1 for sodium azide, 0 for benzylamine hydrochloride.
+ *
+ * A salt that is used up hands its counterion to what leaves, so an acid set free beside it leaves as its salt.
+ */
+export function protonsWanted({ couples }: Perceived): number {
+  const wanted = couples.reduce((sum, { kind, holdsProton }) => {
+    if (kind === 'acid') return sum + (holdsProton ? 0 : 1);
+    return sum - (holdsProton ? 1 : 0);
+  }, 0);
+  return Math.max(0, wanted);
+}

@@ -9,6 +9,8 @@
 export interface Leaving {
   readonly name: string;
   readonly smiles: string;
+  /** SMILES of what is left of a strong acid without its proton; null for the others. */
+  readonly ion: string | null;
   readonly atoms: ReadonlyMap<string, number>;
   /** Enough to protonate amines in the flask. */
   readonly isStrongAcid: boolean;
@@ -21,10 +23,12 @@ function leaving(
   smiles: string,
   atoms: Readonly<Record<string, number>>,
   traits: readonly ('acid' | 'gas')[] = [],
+  ion: string | null = null,
 ): Leaving {
   return {
     name,
     smiles,
+    ion,
     atoms: new Map(Object.entries(atoms)),
     isStrongAcid: traits.includes('acid'),
     isGas: traits.includes('gas'),
@@ -33,10 +37,10 @@ function leaving(
 
 export const LEAVING: readonly Leaving[] = [
   leaving('water', 'O', { H: 2, O: 1 }),
-  leaving('HCl', 'Cl', { H: 1, Cl: 1 }, ['acid']),
-  leaving('HBr', 'Br', { H: 1, Br: 1 }, ['acid']),
-  leaving('HI', 'I', { H: 1, I: 1 }, ['acid']),
-  leaving('HF', 'F', { H: 1, F: 1 }, ['acid']),
+  leaving('HCl', 'Cl', { H: 1, Cl: 1 }, ['acid'], '[Cl-]'),
+  leaving('HBr', 'Br', { H: 1, Br: 1 }, ['acid'], '[Br-]'),
+  leaving('HI', 'I', { H: 1, I: 1 }, ['acid'], '[I-]'),
+  leaving('HF', 'F', { H: 1, F: 1 }, ['acid'], '[F-]'),
   leaving('N2', 'N#N', { N: 2 }, ['gas']),
   leaving('CO2', 'O=C=O', { C: 1, O: 2 }, ['gas']),
   leaving('CO', '[C-]#[O+]', { C: 1, O: 1 }, ['gas']),
@@ -47,12 +51,30 @@ export const LEAVING: readonly Leaving[] = [
   leaving('isobutene', 'CC(=C)C', { C: 4, H: 8 }, ['gas']),
   leaving('tert-butanol', 'CC(C)(C)O', { C: 4, H: 10, O: 1 }),
   leaving('acetic acid', 'CC(=O)O', { C: 2, H: 4, O: 2 }),
-  leaving('methanesulfonic acid', 'CS(=O)(=O)O', { C: 1, H: 4, O: 3, S: 1 }, ['acid']),
-  leaving('p-toluenesulfonic acid', 'Cc1ccc(cc1)S(=O)(=O)O', { C: 7, H: 8, O: 3, S: 1 }, ['acid']),
-  leaving('triflic acid', 'FC(F)(F)S(=O)(=O)O', { C: 1, H: 1, F: 3, O: 3, S: 1 }, ['acid']),
-  leaving('trifluoroacetic acid', 'FC(F)(F)C(=O)O', { C: 2, H: 1, F: 3, O: 2 }, ['acid']),
-  leaving('sulfuric acid', 'OS(=O)(=O)O', { H: 2, O: 4, S: 1 }, ['acid']),
-  leaving('methyl sulfate', 'COS(=O)(=O)O', { C: 1, H: 4, O: 4, S: 1 }, ['acid']),
+  leaving('methanesulfonic acid', 'CS(=O)(=O)O', { C: 1, H: 4, O: 3, S: 1 }, ['acid'], 'CS(=O)(=O)[O-]'),
+  leaving(
+    'p-toluenesulfonic acid',
+    'Cc1ccc(cc1)S(=O)(=O)O',
+    { C: 7, H: 8, O: 3, S: 1 },
+    ['acid'],
+    'Cc1ccc(cc1)S(=O)(=O)[O-]',
+  ),
+  leaving(
+    'triflic acid',
+    'FC(F)(F)S(=O)(=O)O',
+    { C: 1, H: 1, F: 3, O: 3, S: 1 },
+    ['acid'],
+    'FC(F)(F)S(=O)(=O)[O-]',
+  ),
+  leaving(
+    'trifluoroacetic acid',
+    'FC(F)(F)C(=O)O',
+    { C: 2, H: 1, F: 3, O: 2 },
+    ['acid'],
+    'FC(F)(F)C(=O)[O-]',
+  ),
+  leaving('sulfuric acid', 'OS(=O)(=O)O', { H: 2, O: 4, S: 1 }, ['acid'], 'OS(=O)(=O)[O-]'),
+  leaving('methyl sulfate', 'COS(=O)(=O)O', { C: 1, H: 4, O: 4, S: 1 }, ['acid'], 'COS(=O)(=O)[O-]'),
   leaving('dimethylamine', 'CNC', { C: 2, H: 7, N: 1 }, ['gas']),
   leaving('succinimide', 'O=C1CCC(=O)N1', { C: 4, H: 5, N: 1, O: 2 }),
   leaving('benzyl alcohol', 'OCc1ccccc1', { C: 7, H: 8, O: 1 }),

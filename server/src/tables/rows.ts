@@ -111,13 +111,23 @@ export interface ReagentRow extends Sourced {
 }
 
 /** Two things that must not meet, or one thing that must not be made; a caution never claims that anything is safe. */
+/** One thing in a flask that a caution may speak of. */
+export interface Trigger {
+  readonly kind: 'reagent' | 'role' | 'solvent' | 'kind' | 'group';
+  /** Name of the reagent or solvent, role of a reagent, kind of a solvent, SMARTS of a group. */
+  readonly name: string;
+  /** The SMARTS as parsed by the build; null for the other kinds. */
+  readonly pattern: unknown;
+}
+
 export interface CautionRow extends Sourced {
   readonly id: string;
   readonly check: 'toxic-gas' | 'gas-release' | 'runaway-pair' | 'skin-carrier';
-  /** `reagent:NAME`, `role:ROLE`, `group:SMARTS`, `solvent:NAME` or `kind:KIND` of a solvent, joined with ` | ` for "or"; empty where `group` decides. */
-  readonly first: string;
-  readonly second: string;
-  /** Group whose protonated form leaves as a gas. */
+  /** What has to be there, one of these; empty where `group` decides alone. */
+  readonly first: readonly Trigger[];
+  /** What it must not meet, one of these; empty where the first is enough. */
+  readonly second: readonly Trigger[];
+  /** Group whose protonated form is the danger; empty where the pair decides. */
   readonly group: string;
   /** SMILES of the gas. */
   readonly gas: string | null;
@@ -152,6 +162,30 @@ export interface StabilityRow extends Sourced {
   /** Reagent roles or names that take it off. */
   readonly attackedBy: readonly string[];
   readonly note: string;
+}
+
+/** How ordinary it is to take a reagent as the base or the acid, or a solvent as such, and in what. */
+export interface ChoiceRow extends Sourced {
+  /** `reagent:NAME`, `role:ROLE` or `solvent:NAME`; the first row that fits holds. */
+  readonly what: string;
+  readonly as: 'base' | 'acid' | 'solvent';
+  /** never: it is not proposed, for the reason in the note. */
+  readonly usual: 'everyday' | 'known' | 'rare' | 'never';
+  /** Kinds or names of solvents. */
+  readonly usedIn: readonly string[];
+  /** °C up to which it is ordinarily used. */
+  readonly warmest: number | null;
+  /** Ids of electrophiles that it attacks. */
+  readonly attacks: readonly string[];
+  readonly note: string;
+}
+
+/** A group that a nucleophilic base attacks before or beside the proton it was taken for. */
+export interface ElectrophileRow extends Sourced {
+  readonly id: string;
+  readonly name: string;
+  readonly smarts: string;
+  readonly pattern: unknown;
 }
 
 export interface SourceRow {
