@@ -173,7 +173,8 @@ export interface ChoiceRow extends Sourced {
   readonly usual: 'everyday' | 'known' | 'rare' | 'never';
   /** Kinds or names of solvents. */
   readonly usedIn: readonly string[];
-  /** °C up to which it is ordinarily used. */
+  /** °C from which it ordinarily acts, and up to which it is ordinarily used. */
+  readonly coldest: number | null;
   readonly warmest: number | null;
   /** Ids of electrophiles that it attacks. */
   readonly attacks: readonly string[];

@@ -8,6 +8,8 @@ import { foldName } from './names.ts';
 import type {
   ActivationRow,
   CautionRow,
+  ChoiceRow,
+  ElectrophileRow,
   EnthalpyRow,
   GasRow,
   GroupRow,
@@ -45,6 +47,8 @@ interface Built {
   readonly enthalpies: readonly EnthalpyRow[];
   readonly gases: readonly GasRow[];
   readonly hydrides: readonly HydrideRow[];
+  readonly choices: readonly ChoiceRow[];
+  readonly electrophiles: readonly ElectrophileRow[];
   readonly sources: readonly SourceRow[];
 }
 

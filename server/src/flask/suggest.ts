@@ -1,0 +1,400 @@
+/**
+ * Screens every base (acid) of the tables in every solvent for one intended transfer, by the judge that the checks use.
+ *
+ * Knows: flasks, verdicts, rows.  Must not know: plans, text, how a list is shown.
+ * Units: mol, L, K; log K decimal; cost in units of pKa, lower is better.
+ * Invariants:
+ *  1. An option's verdict is that of `judgeTransfer` on the flask with the option in it.   (tests/flask/suggest.test.ts)
+ *  2. Every pair ends as an option or as a rejection with its reason.                     (same)
+ *  3. The same question gives the same list; no more than `MOST_JUDGED` flasks are solved. (same)
+ * A candidate solvent stands alone: what a stock solution of the base brings along is left out.
+ */
+import { constantsIn as constantsOf } from '../chemistry/constants.ts';
+import type { Perceived } from '../chemistry/couple.ts';
+import { perceive } from '../chemistry/perceive.ts';
+import type { LimitRow, ReagentRow, SolventRow } from '../tables/rows.ts';
+import type { Tables } from '../tables/tables.ts';
+import {
+  type Attacked,
+  attackedBy,
+  type Choice,
+  choicesAs,
+  isUsedIn,
+  solventChoice,
+  type Usual,
+} from './choices.ts';
+import { firstSites, lostToSolvent, type OtherSite, siteOrder } from './fates.ts';
+import { type Intent, judgeTransfer, type VerdictThresholds } from './judge.ts';
+import { createReach, type Reach } from './reach.ts';
+import type { ConstantsIn, Contents, Ingredient, Verdict } from './state.ts';
+
+/** What is wanted: a transfer in a flask, and what may be put in place of what. */
+export interface Want {
+  readonly contents: Contents;
+  readonly intent: Intent;
+  /** Ids of the bases (acids) whose place a candidate takes. */
+  readonly acting: readonly number[];
+  /** Ids of the solvents whose place a candidate takes. */
+  readonly solvents: readonly number[];
+  /** mol of candidate for each mol of the site. */
+  readonly equiv: number;
+}
+
+/** One base (acid) in one solvent that makes the transfer. */
+export interface Option {
+  readonly reagent: ReagentRow;
+  /** Null for the solvents as written. */
+  readonly solvent: SolventRow | null;
+  readonly verdict: Verdict;
+  /** More than asked for where other sites have to be covered first. */
+  readonly equiv: number;
+  /** K: as written, or the nearest at which the reagent is ordinarily used. */
+  readonly temperature: number;
+  readonly usual: Usual;
+  /** Sites that take (give) their proton before the meant one and are covered by `equiv`. */
+  readonly ahead: readonly OtherSite[];
+  /** The next site after the meant one. */
+  readonly next: OtherSite | null;
+  /** What is known against the reagent in this solvent at this temperature. */
+  readonly limit: LimitRow | null;
+  readonly notes: readonly string[];
+  readonly cost: number;
+}
+
+export type Reason =
+  | { readonly kind: 'too-weak'; readonly short: number }
+  | { readonly kind: 'not-used-in' }
+  | { readonly kind: 'lost-to-solvent'; readonly share: number }
+  | ({ readonly kind: 'attacks' } & Attacked)
+  | { readonly kind: 'frozen' | 'boils'; readonly temperature: number }
+  | { readonly kind: 'not-proposed'; readonly note: string }
+  | { readonly kind: 'slow' }
+  | { readonly kind: 'no-constant' }
+  | { readonly kind: 'not-reached' };
+
+export interface Rejection {
+  readonly reagent: ReagentRow | null;
+  readonly solvent: SolventRow | null;
+  readonly reason: Reason;
+}
+
+export interface Screening {
+  /** Best first. */
+  readonly options: readonly Option[];
+  readonly rejections: readonly Rejection[];
+  /** The flask as written. */
+  readonly asWritten: Verdict | null;
+}
+
+const ZERO_CELSIUS = 273.15;
+/** Flasks solved for one question; keeps the answer under a second. */
+const MOST_JUDGED = 900;
+const FOR_GOOD = new Set<string>(['metal-hydride', 'metal-amide', 'organometallic', 'aluminium-hydride']);
+const LOST = 0.1;
+const WORKING_DAY = 10;
+/** Excess over what the sites ask for. */
+const EXCESS = 1.05;
+const SURELY_FIRST = 0.8;
+/** A small steady amount is enough for a conversion down to this log K. */
+const STEADY = 8;
+
+/** What speaks against an option, in units of pKa. */
+const COST = {
+  usual: { everyday: 0, known: 1, rare: 3, never: 9 },
+  newSolvent: 0.6,
+  newReagent: 0.3,
+  solventNote: 0.5,
+  otherTemperature: 0.4,
+  limit: 1.5,
+  ahead: 2,
+  undecided: 4,
+  steady: 3,
+  slimMargin: { below: 2, unit: 1 },
+  idleMargin: { above: 6, unit: 0.03 },
+  nextSite: { below: 3, unit: 0.7 },
+} as const;
+
+/** Screens all bases (acids) and solvents for a transfer. */
+export function screen(
+  want: Want,
+  tables: Tables,
+  thresholds?: VerdictThresholds,
+  constantsIn: ConstantsIn = constantsOf,
+): Screening {
+  const screening = new ScreeningRun(want, tables, thresholds, constantsIn);
+  return screening.run();
+}
+
+/** A pair that only the flask can judge. */
+interface Pair {
+  readonly choice: Choice;
+  readonly molecule: Perceived;
+  readonly place: Place;
+  readonly temperature: number;
+  /** Cost before the flask is solved. */
+  readonly prior: number;
+}
+
+interface Place {
+  readonly solvent: SolventRow | null;
+  readonly ingredients: readonly Ingredient[];
+  readonly usual: Usual;
+  readonly note: string;
+  readonly cost: number;
+}
+
+class ScreeningRun {
+  private readonly options: Option[] = [];
+  private readonly rejections: Rejection[] = [];
+  private readonly loses: boolean;
+  private readonly rest: readonly Ingredient[];
+  private readonly site: Ingredient | undefined;
+  private readonly nextId: number;
+  private readonly want: Want;
+  private readonly tables: Tables;
+  private readonly thresholds: VerdictThresholds | undefined;
+  private readonly constantsIn: ConstantsIn;
+  private readonly reach: Reach;
+
+  constructor(
+    want: Want,
+    tables: Tables,
+    thresholds: VerdictThresholds | undefined,
+    constantsIn: ConstantsIn,
+  ) {
+    this.want = want;
+    this.tables = tables;
+    this.thresholds = thresholds;
+    this.constantsIn = constantsIn;
+    const { contents, intent, acting, solvents } = want;
+    this.loses = intent.direction === 'deprotonate';
+    this.rest = contents.ingredients.filter(({ id }) => !acting.includes(id) && !solvents.includes(id));
+    this.site = contents.ingredients.find(({ id }) => id === intent.ingredient);
+    this.reach = createReach(intent, this.site, tables, constantsIn);
+    this.nextId = 1 + Math.max(-1, ...contents.ingredients.map(({ id }) => id));
+  }
+
+  run(): Screening {
+    const { contents, intent } = this.want;
+    const asWritten = judgeTransfer(contents, intent, this.tables, this.constantsIn, this.thresholds);
+    if (this.site?.molecule != null) {
+      const places = this.places();
+      const pairs = choicesAs(this.loses ? 'base' : 'acid', this.tables)
+        .flatMap((choice) => this.pairsOf(choice, places))
+        .sort((a, b) => a.prior - b.prior);
+      // The ordinary pairs come first, so that the bound on the work only ever cuts off the rare ones.
+      for (const [index, pair] of pairs.entries()) {
+        const outcome: Option | Reason = index < MOST_JUDGED ? this.weigh(pair) : { kind: 'not-reached' };
+        if ('kind' in outcome)
+          this.rejections.push({
+            reagent: pair.choice.reagent,
+            solvent: pair.place.solvent,
+            reason: outcome,
+          });
+        else this.options.push(outcome);
+      }
+    }
+    this.options.sort(
+      (a, b) =>
+        a.cost - b.cost ||
+        compare(a.reagent.name, b.reagent.name) ||
+        compare(a.solvent?.name, b.solvent?.name),
+    );
+    return { options: this.options, rejections: this.rejections, asWritten };
+  }
+
+  /** The solvents as written and each of the tables. */
+  private places(): Place[] {
+    const { contents, solvents } = this.want;
+    const written = contents.ingredients.filter(({ id }) => solvents.includes(id));
+    const volume = written.some((one) => one.volume === null)
+      ? null
+      : written.reduce((sum, one) => sum + one.volume!, 0);
+    const rows: Place[] = [];
+    for (const solvent of this.tables.solvents) {
+      const { usual, note } = solventChoice(solvent, this.tables);
+      if (usual === 'never') {
+        this.rejections.push({ reagent: null, solvent, reason: { kind: 'not-proposed', note } });
+        continue;
+      }
+      const ingredient: Ingredient = {
+        id: this.nextId,
+        name: solvent.name,
+        molecule: perceive(solvent.smiles, this.tables),
+        mol: 0,
+        volume: volume === 0 ? null : volume,
+        role: 'solvent',
+        reagent: null,
+        solvent,
+        assumed: volume === null,
+        qualifier: null,
+      };
+      const isWritten = written.length === 1 && written[0]!.solvent?.name === solvent.name;
+      const cost =
+        COST.usual[usual] + (isWritten ? 0 : COST.newSolvent) + (note === '' ? 0 : COST.solventNote);
+      rows.push({ solvent, ingredients: isWritten ? written : [ingredient], usual, note, cost });
+    }
+    const isMixture = 1 < written.length;
+    const before: Place[] = isMixture
+      ? [{ solvent: null, ingredients: written, usual: 'everyday', note: '', cost: 0 }]
+      : [];
+    return [...before, ...rows].sort((a, b) => a.cost - b.cost);
+  }
+
+  /** The places in which a reagent has to be judged; what the tables alone rule out is refused here. */
+  private pairsOf(choice: Choice, places: readonly Place[]): Pair[] {
+    const { reagent, row } = choice;
+    const refuse = (reason: Reason, solvent: SolventRow | null = null) => {
+      this.rejections.push({ reagent, solvent, reason });
+      return [];
+    };
+    if (row.usual === 'never') return refuse({ kind: 'not-proposed', note: row.note });
+    const attacked = attackedBy(choice, this.rest, this.tables);
+    if (attacked !== null) return refuse({ kind: 'attacks', ...attacked });
+    const molecule = perceive(reagent.smiles!, this.tables);
+    const { contents, intent } = this.want;
+    const celsius = contents.temperature - ZERO_CELSIUS;
+    const warmest = row.warmest ?? Number.POSITIVE_INFINITY;
+    const temperature = ZERO_CELSIUS + Math.min(warmest, Math.max(celsius, row.coldest ?? celsius));
+    return places.flatMap((place) => {
+      const { solvent, ingredients } = place;
+      const rows = ingredients.flatMap((one) => one.solvent ?? []);
+      if (!rows.some((one) => isUsedIn(row, one))) return refuse({ kind: 'not-used-in' }, solvent);
+      const outside = rows.map((one) => rangeOf(one, temperature)).find((one) => one !== null);
+      if (outside != null) return refuse(outside, solvent);
+      const gap = this.reach.gapAtBest(reagent, molecule, rows[0]!.scale);
+      if (gap !== null && gap < -(intent.isConsumed ? STEADY : 0))
+        return refuse({ kind: 'too-weak', short: -gap }, solvent);
+      return [{ choice, molecule, place, temperature, prior: COST.usual[row.usual] + place.cost }];
+    });
+  }
+
+  private flaskOf({ choice, molecule, place, temperature }: Pair, equiv: number): Contents {
+    const { reagent } = choice;
+    const candidate: Ingredient = {
+      id: this.nextId + 1,
+      name: reagent.name,
+      molecule,
+      mol: equiv * this.site!.mol,
+      volume: null,
+      role: this.loses ? 'base' : 'acid',
+      reagent,
+      solvent: null,
+      assumed: false,
+      qualifier: null,
+    };
+    return {
+      ...this.want.contents,
+      temperature,
+      ingredients: [...place.ingredients, ...this.rest, candidate],
+    };
+  }
+
+  private weigh(pair: Pair): Option | Reason {
+    const { choice, place, temperature } = pair;
+    const { reagent, row } = choice;
+    const { solvent } = place;
+    const flask = (mol: number) => this.flaskOf(pair, mol);
+    const { intent, equiv: asked, contents } = this.want;
+    const { tables, constantsIn } = this;
+    if (reagent.roles.some((role) => FOR_GOOD.has(role))) {
+      const lost = lostToSolvent(flask(asked), tables, constantsIn)[0];
+      if (lost !== undefined && LOST <= lost.share) return { kind: 'lost-to-solvent', share: lost.share };
+    }
+    let equiv = asked;
+    let verdict = this.judge(flask(equiv));
+    if (verdict === null) return { kind: 'no-constant' };
+    let order = siteOrder(flask(equiv), verdict, intent.direction, tables, constantsIn);
+    const ahead = firstSites(order, SURELY_FIRST).filter(({ amount }) => 0.05 * this.site!.mol <= amount);
+    if (0 < verdict.logK && ahead.length !== 0) {
+      const others = ahead.reduce((sum, { amount }) => sum + amount, 0) / this.site!.mol;
+      equiv = Math.max(asked, EXCESS * (1 + others));
+      verdict = this.judge(flask(equiv))!;
+      order = siteOrder(flask(equiv), verdict, intent.direction, tables, constantsIn);
+    }
+    if (verdict.allowances.includes('slow')) return { kind: 'slow' };
+    if (verdict.answer === 'no') return { kind: 'too-weak', short: Math.max(0, -verdict.margin) };
+    const next =
+      order.find((one) => 0 < one.difference && !ahead.includes(one) && one.probability < SURELY_FIRST) ??
+      null;
+    const limit = this.limitOf(reagent, place, temperature);
+    const notes = [row.note, place.note].filter((note) => note !== '');
+    const isWrittenReagent = contents.ingredients.some(
+      ({ id, reagent: own }) => this.want.acting.includes(id) && own?.name === reagent.name,
+    );
+    const cost =
+      COST.usual[row.usual] +
+      place.cost +
+      (isWrittenReagent ? 0 : COST.newReagent) +
+      (temperature === contents.temperature ? 0 : COST.otherTemperature) +
+      (isShort(limit) ? COST.limit : 0) +
+      (ahead.length === 0 ? 0 : COST.ahead) +
+      costOf(verdict, next, this.loses);
+    return {
+      reagent,
+      solvent,
+      verdict,
+      equiv,
+      temperature,
+      usual: row.usual,
+      ahead,
+      next,
+      limit,
+      notes,
+      cost,
+    };
+  }
+
+  private judge(contents: Contents): Verdict | null {
+    return judgeTransfer(contents, this.want.intent, this.tables, this.constantsIn, this.thresholds);
+  }
+
+  /** What is known against a reagent in a solvent at this temperature or below. */
+  private limitOf(reagent: ReagentRow, { ingredients }: Place, temperature: number): LimitRow | null {
+    const celsius = temperature - ZERO_CELSIUS;
+    return (
+      this.tables.limits.find(
+        (row) =>
+          row.reagent === reagent.name &&
+          row.temperature <= celsius &&
+          ingredients.some(({ solvent }) => solvent?.name === row.solvent),
+      ) ?? null
+    );
+  }
+}
+
+function rangeOf(solvent: SolventRow | null, temperature: number): Reason | null {
+  const celsius = temperature - ZERO_CELSIUS;
+  if (solvent?.meltingPoint != null && celsius < solvent.meltingPoint) return { kind: 'frozen', temperature };
+  if (solvent?.boilingPoint != null && solvent.boilingPoint + 1 < celsius)
+    return { kind: 'boils', temperature };
+  return null;
+}
+
+/** Whether half of the reagent is known to be gone within a working day. */
+function isShort(limit: LimitRow | null): boolean {
+  return limit?.halfLifeHours != null && limit.halfLifeHours < WORKING_DAY;
+}
+
+function costOf(
+  { answer, allowances, margin, probability, partner }: Verdict,
+  next: OtherSite | null,
+  loses: boolean,
+): number {
+  const { slimMargin, idleMargin, nextSite } = COST;
+  let cost = 2 * probability;
+  if (answer === 'undecided') cost += COST.undecided;
+  if (allowances.includes('steady-amount')) cost += COST.steady;
+  cost += slimMargin.unit * Math.max(0, Math.min(slimMargin.below - margin, 6));
+  cost += idleMargin.unit * Math.max(0, margin - idleMargin.above);
+  if (next !== null && partner !== null) {
+    const gap = partner.constant.value - next.site.constant.value;
+    // A base that cannot take the next site leaves it alone even in excess.
+    if (0 < (loses ? gap : -gap)) cost += nextSite.unit * Math.max(0, nextSite.below - next.difference);
+  }
+  return cost;
+}
+
+function compare(a = '', b = ''): number {
+  return a < b ? -1 : b < a ? 1 : 0;
+}
