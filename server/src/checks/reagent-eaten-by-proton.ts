@@ -19,7 +19,7 @@ export default defineCheck({
     const said = new Set<number>();
     for (const { statement, contents } of facts.moments) {
       if (statement.keyword === 'convert' || statement.keyword === 'quench') break;
-      for (const fate of reagentFates(contents, facts.tables, constantsIn)) {
+      for (const fate of reagentFates(contents, facts.tables, constantsIn, SPARING)) {
         if (fate.as !== 'base' || fate.bySolvent || fate.share < 0.2 || said.has(fate.ingredient)) continue;
         const addition = facts.additions.find(({ ingredient }) => ingredient.id === fate.ingredient);
         if (
@@ -45,3 +45,6 @@ export default defineCheck({
     }
   },
 });
+
+/** An organometallic adds to a carbonyl group rather than taking the proton beside it. */
+const SPARING = { sparingCarbonyls: true };

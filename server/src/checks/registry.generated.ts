@@ -8,6 +8,7 @@ import amountsDisagree from './amounts-disagree.ts';
 import atomWithoutSource from './atom-without-source.ts';
 import badUnit from './bad-unit.ts';
 import badUse from './bad-use.ts';
+import baseExcess from './base-excess.ts';
 import baseShort from './base-short.ts';
 import borrowedScale from './borrowed-scale.ts';
 import budgetReached from './budget-reached.ts';
@@ -49,6 +50,7 @@ export const CHECKS: readonly Check[] = [
   atomWithoutSource,
   badUnit,
   badUse,
+  baseExcess,
   baseShort,
   borrowedScale,
   budgetReached,

@@ -1,7 +1,9 @@
 /** The solvent gives its proton to a base that was meant for something else. */
 import { constantsIn } from '../chemistry/constants.ts';
-import { reagentFates } from '../flask/fates.ts';
+import { lostToSolvent, type ReagentFate, reagentFates } from '../flask/fates.ts';
+import type { Contents } from '../flask/state.ts';
 import { defineCheck } from './define.ts';
+import type { StepFacts } from './facts.ts';
 import { unit } from './verdicts.ts';
 
 export default defineCheck({
@@ -35,7 +37,7 @@ step A
     for (const { statement, contents } of facts.moments) {
       if (statement.keyword === 'convert' || statement.keyword === 'quench' || statement.keyword === 'wash')
         break;
-      for (const fate of reagentFates(contents, facts.tables, constantsIn)) {
+      for (const fate of lossesTo(contents, facts)) {
         if (fate.as !== 'base' || !fate.bySolvent || fate.isLevelled || fate.share < 0.1) continue;
         const base = facts.additions.find(({ ingredient }) => ingredient.id === fate.ingredient);
         const solvent = facts.additions.find(({ ingredient }) => ingredient.id === fate.other.ingredient);
@@ -63,6 +65,22 @@ step A
     }
   },
 });
+
+/**
+ * What the solvent takes of each reagent.
+ *
+ * A metal amide or an organometallic in solution meets the solvent first; a solid hydride waits, and is judged by where
+ * its protons end up.
+ */
+function lossesTo(contents: Contents, { tables }: StepFacts): ReagentFate[] {
+  const isHydride = ({ ingredient }: ReagentFate) =>
+    contents.ingredients.find(({ id }) => id === ingredient)?.reagent?.roles.includes('metal-hydride') ??
+    false;
+  return [
+    ...lostToSolvent(contents, tables, constantsIn).filter((fate) => !isHydride(fate)),
+    ...reagentFates(contents, tables, constantsIn).filter(isHydride),
+  ];
+}
 
 /** Reagents that never come back once a proton has been taken. */
 const FOR_GOOD = new Set<string>(['metal-hydride', 'metal-amide', 'organometallic', 'aluminium-hydride']);

@@ -26,6 +26,7 @@ export interface ReagentFate {
   readonly mol: number;
   /** Share of what this ingredient could take (give) as charged. */
   readonly share: number;
+  /** By a solvent, the one that governs or another of the mixture. */
   readonly bySolvent: boolean;
   /** A reversible exchange with the solvent, whose own ion then acts; never true of hydrides, amides, organometallics. */
   readonly isLevelled: boolean;
@@ -90,8 +91,8 @@ export function fatesOf(solved: Solved): ReagentFate[] {
     const doubt = normalBelow(-transfer.gap / Math.max(sd, Number.MIN_VALUE));
     const add = (as: 'base' | 'acid') => {
       const [own, other] = as === 'base' ? [transfer.to, transfer.from] : [transfer.from, transfer.to];
-      const isSolvent = as === 'base' ? transfer.toSolvent : transfer.fromSolvent;
-      const bySolvent = as === 'base' ? transfer.fromSolvent : transfer.toSolvent;
+      const isSolvent = byId.get(own.ingredient)?.role === 'solvent';
+      const bySolvent = byId.get(other.ingredient)?.role === 'solvent';
       if (isSolvent) return;
       const whole = ableAsCharged(solved, own, as);
       const share = whole === 0 ? 0 : transfer.mol / whole;

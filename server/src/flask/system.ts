@@ -120,10 +120,20 @@ function isGoverning({ solvent }: Ingredient, medium: Medium): boolean {
 
 function solventAmount({ solvent, volume, mol, molecule }: Ingredient, medium: Medium): number {
   const litres = volume !== null && 0 < volume ? volume : medium.volume;
-  const mass = molecule?.molarMass ?? null;
-  const density = solvent?.density ?? null;
-  if (mass !== null && density !== null) return (litres * 1000 * density) / mass;
-  return usable(mol);
+  return molOfLiquid(litres, { solvent, molecule }) ?? usable(mol);
+}
+
+/** mol of a solvent beside the one that governs: a tenth of water in THF still eats a Grignard reagent. */
+function minorAmount({ solvent, volume, molecule }: Ingredient): number {
+  return volume === null ? 0 : usable(molOfLiquid(volume, { solvent, molecule }) ?? 0);
+}
+
+function molOfLiquid(
+  litres: number,
+  { solvent, molecule }: Pick<Ingredient, 'solvent' | 'molecule'>,
+): number | null {
+  const [mass, density] = [molecule?.molarMass ?? null, solvent?.density ?? null];
+  return mass === null || density === null ? null : (litres * 1000 * density) / mass;
 }
 
 /** The lyonium and lyate couples of the solvent that governs. */
@@ -220,7 +230,7 @@ function aliveCouples(
 
 function ingredientAcids(one: Ingredient, build: Build): { acids: FlaskAcid[]; charges: number } {
   const { medium, tables, constantsIn } = build;
-  const amount = usable(one.mol);
+  const amount = one.role === 'solvent' ? minorAmount(one) : usable(one.mol);
   if (one.molecule === null || amount === 0) return { acids: [], charges: 0 };
   if (isSolidBase(one) && !medium.protic && medium.organic === null) {
     return { acids: surfaceAcid(one, amount, medium), charges: 0 };
