@@ -30,6 +30,7 @@ import skinCarrier from './skin-carrier.ts';
 import solventAttacked from './solvent-attacked.ts';
 import solventLosesProton from './solvent-loses-proton.ts';
 import solventOutOfRange from './solvent-out-of-range.ts';
+import solventTakesProton from './solvent-takes-proton.ts';
 import toxicGas from './toxic-gas.ts';
 import transferPartial from './transfer-partial.ts';
 import transferSlow from './transfer-slow.ts';
@@ -72,6 +73,7 @@ export const CHECKS: readonly Check[] = [
   solventAttacked,
   solventLosesProton,
   solventOutOfRange,
+  solventTakesProton,
   toxicGas,
   transferPartial,
   transferSlow,

@@ -27,6 +27,8 @@ export interface Judged {
 const FAILED = 0.1;
 /** Reagents that never come back once a proton has been taken. */
 const FOR_GOOD = new Set<string>(['metal-hydride', 'metal-amide', 'organometallic', 'aluminium-hydride']);
+/** Solvents in which an acid is used as their own cation as a matter of course. */
+const LEVELLING = new Set(['water', 'alcohol', 'acid']);
 /** Sites of less than this share of the intended one take no base worth naming. */
 const WORTH_NAMING = 0.05;
 /** A base that covers this share of the sites covers them. */
@@ -75,11 +77,14 @@ function kindOf(
   return { kind: verdict.extent < FAILED ? 'uphill' : 'partial', ahead: none };
 }
 
-/** A base that its solvent has eaten for good is the solvent's finding, not the transfer's. */
-function isSpentOnSolvent({ additions }: StepFacts, { partner, broughtBy }: Verdict): boolean {
+/** A base that its solvent has eaten for good, or an acid that it levels, is the solvent's finding, not the transfer's. */
+export function isSpentOnSolvent({ additions }: StepFacts, { partner, broughtBy, site }: Verdict): boolean {
   const find = (id: number | null | undefined) =>
     additions.find(({ ingredient }) => ingredient.id === id)?.ingredient;
-  if (find(partner?.ingredient)?.role !== 'solvent') return false;
+  const solvent = find(partner?.ingredient);
+  if (solvent?.role !== 'solvent' || solvent.solvent === null) return false;
+  if (partner?.couple.kind === 'base' && !site.couple.holdsProton)
+    return !LEVELLING.has(solvent.solvent.kind);
   return find(broughtBy)?.reagent?.roles.some((role) => FOR_GOOD.has(role)) ?? false;
 }
 
