@@ -4,6 +4,7 @@
  * Knows: findings and the pages of checks.  Must not know: files on disk.
  * Sources: OASIS SARIF 2.1.0.
  */
+import { explanation } from '../answers/explain.ts';
 import type { CheckPages } from '../checks/define.ts';
 import type { Finding, Severity } from '../checks/finding.ts';
 import type { Range } from '../route/plan.ts';
@@ -31,6 +32,7 @@ export function sarifReport(
       {
         tool: { driver: { name: 'lyate', version, semanticVersion: version, rules: checks.map(rule) } },
         columnKind: 'utf16CodeUnits',
+        artifacts: files.map(({ file }) => ({ location: { uri: uriOf(file) }, roles: ['analysisTarget'] })),
         results: files.flatMap((file) => {
           const lines = file.text.split(/\r\n|\n|\r/);
           return file.findings.map((finding) => result(file.file, lines, finding, places));
@@ -41,14 +43,16 @@ export function sarifReport(
   return `${JSON.stringify(log, null, 1)}\n`;
 }
 
-function rule({ name, summary, why, remedy, severity, family }: CheckPages) {
+function rule(check: CheckPages) {
+  const { name, summary, why, remedy, severity, family, quiet } = check;
   return {
     id: name,
+    name,
     shortDescription: { text: summary },
     fullDescription: { text: why },
-    help: { text: `${why} ${remedy}` },
-    defaultConfiguration: { level: LEVELS[severity] },
-    properties: { family },
+    help: { text: `${why} ${remedy}`, markdown: explanation(name) ?? `${why} ${remedy}` },
+    defaultConfiguration: { level: LEVELS[severity], ...(quiet ? { enabled: false } : {}) },
+    properties: { family, tags: [family] },
   };
 }
 
@@ -76,16 +80,15 @@ function result(
           })),
         }),
     partialFingerprints: { 'lyate/v1': fingerprint(finding, lines) },
-    ...(accepted
-      ? { suppressions: [{ kind: 'inSource', status: 'accepted', justification: reason ?? '' }] }
-      : {}),
+    // An empty list says that suppressions were looked for, so a viewer can tell open from unknown.
+    suppressions: accepted ? [{ kind: 'inSource', status: 'accepted', justification: reason ?? '' }] : [],
     properties: { confidence, figures },
   };
 }
 
 function physical(file: string, { start, end }: Range) {
   return {
-    artifactLocation: { uri: file.split(/[\\/]/).map(encodeURIComponent).join('/') },
+    artifactLocation: { uri: uriOf(file) },
     region: {
       startLine: start.line + 1,
       startColumn: start.character + 1,
@@ -93,4 +96,10 @@ function physical(file: string, { start, end }: Range) {
       endColumn: end.character + 1,
     },
   };
+}
+
+/** A relative reference for a path as given, an absolute one as a file address. */
+function uriOf(file: string): string {
+  const parts = file.split(/[\\/]/).map(encodeURIComponent);
+  return file.startsWith('/') ? `file://${parts.join('/')}` : parts.join('/');
 }
