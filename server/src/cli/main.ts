@@ -12,6 +12,7 @@ import { addFlask } from './flask.ts';
 import { addFormat } from './format.ts';
 import { addServe } from './serve.ts';
 import { addSites } from './sites.ts';
+import { addSuggest } from './suggest.ts';
 import { addWindow } from './window.ts';
 
 const program = new Command('lyate')
@@ -19,7 +20,8 @@ const program = new Command('lyate')
   .version(`lyate ${packageFile.version}, tables ${builtTables().version}`)
   .exitOverride((error) => process.exit(error.exitCode === 0 ? 0 : 2));
 
-for (const add of [addCheck, addSites, addFlask, addWindow, addExplain, addFormat, addServe]) add(program);
+for (const add of [addCheck, addSites, addSuggest, addFlask, addWindow, addExplain, addFormat, addServe])
+  add(program);
 
 process.stdout.on('error', (error: NodeJS.ErrnoException) => process.exit(error.code === 'EPIPE' ? 0 : 2));
 

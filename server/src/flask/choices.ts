@@ -13,6 +13,9 @@ import type { Ingredient } from './state.ts';
 
 export type Usual = ChoiceRow['usual'];
 
+/** What it costs to be less than ordinary, in units of pKa. */
+export const USUAL_COST: Readonly<Record<Usual, number>> = { everyday: 0, known: 1, rare: 3, never: 9 };
+
 /** A reagent that could act, with the row that says how ordinary that is. */
 export interface Choice {
   readonly reagent: ReagentRow;
@@ -51,10 +54,15 @@ export function choicesAs(as: 'base' | 'acid', { reagents, choices }: Tables): C
   });
 }
 
-/** How ordinary a solvent is, and why not where it is not. */
-export function solventChoice({ name }: SolventRow, { choices }: Tables): { usual: Usual; note: string } {
-  const row = choices.find(({ as, what }) => as === 'solvent' && what === `solvent:${name}`);
-  return { usual: row?.usual ?? 'rare', note: row?.note ?? '' };
+/** How ordinary a solvent is, why not where it is not, and its place among the ordinary ones. */
+export function solventChoice(
+  { name }: SolventRow,
+  { choices }: Tables,
+): { readonly usual: Usual; readonly note: string; readonly rank: number } {
+  const rank = choices.findIndex(({ as, what }) => as === 'solvent' && what === `solvent:${name}`);
+  const row = choices[rank];
+  if (row === undefined) return { usual: 'rare', note: '', rank: choices.length };
+  return { usual: row.usual, note: row.note, rank };
 }
 
 /** Whether a reagent is ordinarily used in a solvent. */

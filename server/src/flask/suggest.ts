@@ -10,7 +10,6 @@
  * A candidate solvent stands alone: what a stock solution of the base brings along is left out.
  */
 import { constantsIn as constantsOf } from '../chemistry/constants.ts';
-import type { Perceived } from '../chemistry/couple.ts';
 import { perceive } from '../chemistry/perceive.ts';
 import type { LimitRow, ReagentRow, SolventRow } from '../tables/rows.ts';
 import type { Tables } from '../tables/tables.ts';
@@ -20,12 +19,13 @@ import {
   type Choice,
   choicesAs,
   isUsedIn,
-  solventChoice,
+  USUAL_COST,
   type Usual,
 } from './choices.ts';
 import { firstSites, lostToSolvent, type OtherSite, siteOrder } from './fates.ts';
 import { type Intent, judgeTransfer, type VerdictThresholds } from './judge.ts';
 import { createReach, type Reach } from './reach.ts';
+import { type Place, solventsTried } from './solvents-tried.ts';
 import type { ConstantsIn, Contents, Ingredient, Verdict } from './state.ts';
 
 /** What is wanted: a transfer in a flask, and what may be put in place of what. */
@@ -38,6 +38,8 @@ export interface Want {
   readonly solvents: readonly number[];
   /** mol of candidate for each mol of the site. */
   readonly equiv: number;
+  /** ordinary: what is rare is looked at only where nothing ordinary does it. */
+  readonly breadth: 'ordinary' | 'all';
 }
 
 /** One base (acid) in one solvent that makes the transfer. */
@@ -59,6 +61,8 @@ export interface Option {
   readonly limit: LimitRow | null;
   readonly notes: readonly string[];
   readonly cost: number;
+  /** Place of the solvent among all, to settle ties. */
+  readonly rank: number;
 }
 
 export type Reason =
@@ -88,7 +92,9 @@ export interface Screening {
 
 const ZERO_CELSIUS = 273.15;
 /** Flasks solved for one question; keeps the answer under a second. */
-const MOST_JUDGED = 900;
+const MOST_JUDGED = 500;
+/** Options from which the rare pairs are left out where only the ordinary ones are asked for. */
+const ENOUGH = 12;
 const FOR_GOOD = new Set<string>(['metal-hydride', 'metal-amide', 'organometallic', 'aluminium-hydride']);
 const LOST = 0.1;
 const WORKING_DAY = 10;
@@ -100,16 +106,13 @@ const STEADY = 8;
 
 /** What speaks against an option, in units of pKa. */
 const COST = {
-  usual: { everyday: 0, known: 1, rare: 3, never: 9 },
-  newSolvent: 0.6,
-  newReagent: 0.3,
-  solventNote: 0.5,
-  otherTemperature: 0.4,
+  newReagent: 0.6,
+  otherTemperature: 0.2,
   limit: 1.5,
   ahead: 2,
   undecided: 4,
   steady: 3,
-  slimMargin: { below: 2, unit: 1 },
+  slimMargin: { below: 1.5, unit: 0.8 },
   idleMargin: { above: 6, unit: 0.03 },
   nextSite: { below: 3, unit: 0.7 },
 } as const;
@@ -128,24 +131,16 @@ export function screen(
 /** A pair that only the flask can judge. */
 interface Pair {
   readonly choice: Choice;
-  readonly molecule: Perceived;
   readonly place: Place;
   readonly temperature: number;
   /** Cost before the flask is solved. */
   readonly prior: number;
 }
 
-interface Place {
-  readonly solvent: SolventRow | null;
-  readonly ingredients: readonly Ingredient[];
-  readonly usual: Usual;
-  readonly note: string;
-  readonly cost: number;
-}
-
 class ScreeningRun {
   private readonly options: Option[] = [];
   private readonly rejections: Rejection[] = [];
+  private judged = 0;
   private readonly loses: boolean;
   private readonly rest: readonly Ingredient[];
   private readonly site: Ingredient | undefined;
@@ -175,70 +170,21 @@ class ScreeningRun {
   }
 
   run(): Screening {
-    const { contents, intent } = this.want;
+    const { contents, intent, solvents } = this.want;
     const asWritten = judgeTransfer(contents, intent, this.tables, this.constantsIn, this.thresholds);
     if (this.site?.molecule != null) {
-      const places = this.places();
+      const { places, never } = solventsTried(contents, solvents, this.nextId, this.tables);
+      for (const { solvent, note } of never)
+        this.rejections.push({ reagent: null, solvent, reason: { kind: 'not-proposed', note } });
       const pairs = choicesAs(this.loses ? 'base' : 'acid', this.tables)
         .flatMap((choice) => this.pairsOf(choice, places))
         .sort((a, b) => a.prior - b.prior);
-      // The ordinary pairs come first, so that the bound on the work only ever cuts off the rare ones.
-      for (const [index, pair] of pairs.entries()) {
-        const outcome: Option | Reason = index < MOST_JUDGED ? this.weigh(pair) : { kind: 'not-reached' };
-        if ('kind' in outcome)
-          this.rejections.push({
-            reagent: pair.choice.reagent,
-            solvent: pair.place.solvent,
-            reason: outcome,
-          });
-        else this.options.push(outcome);
-      }
+      for (const pair of pairs) this.tryPair(pair);
     }
     this.options.sort(
-      (a, b) =>
-        a.cost - b.cost ||
-        compare(a.reagent.name, b.reagent.name) ||
-        compare(a.solvent?.name, b.solvent?.name),
+      (a, b) => a.cost - b.cost || compare(a.reagent.name, b.reagent.name) || a.rank - b.rank,
     );
     return { options: this.options, rejections: this.rejections, asWritten };
-  }
-
-  /** The solvents as written and each of the tables. */
-  private places(): Place[] {
-    const { contents, solvents } = this.want;
-    const written = contents.ingredients.filter(({ id }) => solvents.includes(id));
-    const volume = written.some((one) => one.volume === null)
-      ? null
-      : written.reduce((sum, one) => sum + one.volume!, 0);
-    const rows: Place[] = [];
-    for (const solvent of this.tables.solvents) {
-      const { usual, note } = solventChoice(solvent, this.tables);
-      if (usual === 'never') {
-        this.rejections.push({ reagent: null, solvent, reason: { kind: 'not-proposed', note } });
-        continue;
-      }
-      const ingredient: Ingredient = {
-        id: this.nextId,
-        name: solvent.name,
-        molecule: perceive(solvent.smiles, this.tables),
-        mol: 0,
-        volume: volume === 0 ? null : volume,
-        role: 'solvent',
-        reagent: null,
-        solvent,
-        assumed: volume === null,
-        qualifier: null,
-      };
-      const isWritten = written.length === 1 && written[0]!.solvent?.name === solvent.name;
-      const cost =
-        COST.usual[usual] + (isWritten ? 0 : COST.newSolvent) + (note === '' ? 0 : COST.solventNote);
-      rows.push({ solvent, ingredients: isWritten ? written : [ingredient], usual, note, cost });
-    }
-    const isMixture = 1 < written.length;
-    const before: Place[] = isMixture
-      ? [{ solvent: null, ingredients: written, usual: 'everyday', note: '', cost: 0 }]
-      : [];
-    return [...before, ...rows].sort((a, b) => a.cost - b.cost);
   }
 
   /** The places in which a reagent has to be judged; what the tables alone rule out is refused here. */
@@ -251,9 +197,7 @@ class ScreeningRun {
     if (row.usual === 'never') return refuse({ kind: 'not-proposed', note: row.note });
     const attacked = attackedBy(choice, this.rest, this.tables);
     if (attacked !== null) return refuse({ kind: 'attacks', ...attacked });
-    const molecule = perceive(reagent.smiles!, this.tables);
-    const { contents, intent } = this.want;
-    const celsius = contents.temperature - ZERO_CELSIUS;
+    const celsius = this.want.contents.temperature - ZERO_CELSIUS;
     const warmest = row.warmest ?? Number.POSITIVE_INFINITY;
     const temperature = ZERO_CELSIUS + Math.min(warmest, Math.max(celsius, row.coldest ?? celsius));
     return places.flatMap((place) => {
@@ -262,19 +206,41 @@ class ScreeningRun {
       if (!rows.some((one) => isUsedIn(row, one))) return refuse({ kind: 'not-used-in' }, solvent);
       const outside = rows.map((one) => rangeOf(one, temperature)).find((one) => one !== null);
       if (outside != null) return refuse(outside, solvent);
-      const gap = this.reach.gapAtBest(reagent, molecule, rows[0]!.scale);
-      if (gap !== null && gap < -(intent.isConsumed ? STEADY : 0))
-        return refuse({ kind: 'too-weak', short: -gap }, solvent);
-      return [{ choice, molecule, place, temperature, prior: COST.usual[row.usual] + place.cost }];
+      return [{ choice, place, temperature, prior: USUAL_COST[row.usual] + place.cost }];
     });
   }
 
-  private flaskOf({ choice, molecule, place, temperature }: Pair, equiv: number): Contents {
+  /** Comes to the pairs in the order of how ordinary they are, so that bounds on the work cut off only the rare ones. */
+  private tryPair(pair: Pair): void {
+    const { choice, place } = pair;
+    const outcome = this.isBeyond(pair) ? ({ kind: 'not-reached' } as const) : this.outcomeOf(pair);
+    if ('kind' in outcome)
+      this.rejections.push({ reagent: choice.reagent, solvent: place.solvent, reason: outcome });
+    else this.options.push(outcome);
+  }
+
+  private isBeyond({ prior }: Pair): boolean {
+    if (MOST_JUDGED <= this.judged) return true;
+    return this.want.breadth === 'ordinary' && USUAL_COST.rare <= prior && ENOUGH <= this.options.length;
+  }
+
+  private outcomeOf(pair: Pair): Option | Reason {
+    const { choice, place } = pair;
+    const { reagent } = choice;
+    const { scale } = place.ingredients[0]!.solvent!;
+    const gap = this.reach.gapAtBest(reagent, perceive(reagent.smiles!, this.tables), scale);
+    if (gap !== null && gap < -(this.want.intent.isConsumed ? STEADY : 0))
+      return { kind: 'too-weak', short: -gap };
+    this.judged++;
+    return this.weigh(pair);
+  }
+
+  private flaskOf({ choice, place, temperature }: Pair, equiv: number): Contents {
     const { reagent } = choice;
     const candidate: Ingredient = {
       id: this.nextId + 1,
       name: reagent.name,
-      molecule,
+      molecule: perceive(reagent.smiles!, this.tables),
       mol: equiv * this.site!.mol,
       volume: null,
       role: this.loses ? 'base' : 'acid',
@@ -304,6 +270,8 @@ class ScreeningRun {
     let equiv = asked;
     let verdict = this.judge(flask(equiv));
     if (verdict === null) return { kind: 'no-constant' };
+    if (verdict.answer === 'no' && verdict.logK <= 0)
+      return { kind: 'too-weak', short: Math.max(0, -verdict.margin) };
     let order = siteOrder(flask(equiv), verdict, intent.direction, tables, constantsIn);
     const ahead = firstSites(order, SURELY_FIRST).filter(({ amount }) => 0.05 * this.site!.mol <= amount);
     if (0 < verdict.logK && ahead.length !== 0) {
@@ -323,7 +291,7 @@ class ScreeningRun {
       ({ id, reagent: own }) => this.want.acting.includes(id) && own?.name === reagent.name,
     );
     const cost =
-      COST.usual[row.usual] +
+      USUAL_COST[row.usual] +
       place.cost +
       (isWrittenReagent ? 0 : COST.newReagent) +
       (temperature === contents.temperature ? 0 : COST.otherTemperature) +
@@ -342,6 +310,7 @@ class ScreeningRun {
       limit,
       notes,
       cost,
+      rank: place.rank,
     };
   }
 

@@ -1,0 +1,125 @@
+/** Suggestions in their steps: the edited text reads as promised and raises no new error. */
+import { expect, test } from 'vitest';
+import { analyseNow, createAnalyser } from '../../server/src/answers/analyse.ts';
+import type { Edit } from '../../server/src/answers/fixes.ts';
+import { suggestionsAt, suggestionsOf } from '../../server/src/answers/suggest.ts';
+import { pairsRecord, suggestionsRecord } from '../../server/src/answers/suggest-record.ts';
+import { suggestionsText } from '../../server/src/answers/suggest-text.ts';
+import { tables } from '../support/tables.ts';
+
+const analyser = createAnalyser(tables);
+const analyse = (text: string) => analyseNow(analyser, { file: 'plan.lyate', text, language: 'lyate' });
+
+function edited(text: string, edits: readonly Edit[]): string {
+  const starts = [0];
+  for (const match of text.matchAll(/\n/g)) starts.push(match.index + 1);
+  const at = ({ line, character }: { line: number; character: number }) =>
+    (starts[line] ?? text.length) + character;
+  return edits
+    .map((edit, order) => ({ ...edit, order }))
+    .sort((a, b) => at(b.range.start) - at(a.range.start) || b.order - a.order)
+    .reduce(
+      (now, { range, text: put }) => now.slice(0, at(range.start)) + put + now.slice(at(range.end)),
+      text,
+    );
+}
+
+const KETONE = `compound K = O=C([CH3:1])c1ccccc1
+
+step A "Hydroxide against a ketone"
+  solvent     water 30 mL
+  charge      K 10 mmol
+  base        NaOH 1.1 equiv
+  deprotonate K at :1
+`;
+
+const errorsOf = (text: string) => analyse(text).findings.filter(({ severity }) => severity === 'error');
+
+test('each suggestion, taken, mends the step', () => {
+  const [one] = suggestionsOf(analyse(KETONE), 'A')!;
+  expect(errorsOf(KETONE).map(({ check }) => check)).toEqual(['transfer-uphill']);
+  expect(one!.list.length).toBeGreaterThan(5);
+  // Each stands for one step worked, of which there are twenty at most.
+  expect(one!.list.length).toBeLessThanOrEqual(20);
+  for (const { title, edits, option } of one!.list) {
+    const text = edited(KETONE, edits);
+    expect(errorsOf(text), `${title}\n${text}`).toEqual([]);
+    const [fact] = analyse(text).steps[0]!.facts.transfers;
+    expect(fact!.verdicts[0]!.margin, title).toBeCloseTo(option.verdict.margin, 1);
+  }
+});
+
+test('an edit replaces name, strength and solvent and keeps the rest of the line', () => {
+  const text = `compound K = O=C([CH3:1])c1ccccc1
+step A
+  solvent MeCN/toluene 1:1 20 mL // dry
+  temperature -40 °C
+  charge K 5 mmol
+  base LDA 1.1 equiv 2.0 M in THF // fresh
+  deprotonate K at :1
+`;
+  const lda = suggestionsOf(analyse(text), 'A')![0]!.list.find(({ title }) => title === 'LDA in THF')!;
+  const after = edited(text, lda.edits);
+  expect(after).toContain('  solvent THF 20 mL // dry\n');
+  expect(after).toContain('  base LDA 1.1 equiv // fresh\n');
+  expect(errorsOf(after)).toEqual([]);
+});
+
+test('a step without a base gets one on a line of its own', () => {
+  const text = KETONE.replace('  base        NaOH 1.1 equiv\n', '').replace('water', 'THF');
+  const [one] = suggestionsOf(analyse(text), 'A')!;
+  expect(one!.asWritten.acting).toEqual([]);
+  const after = edited(text, one!.list[0]!.edits);
+  expect(after).toMatch(/\n {2}base \S+ 1\.1 equiv\n/);
+  expect(errorsOf(after)).toEqual([]);
+});
+
+test('a compound of the plan with the name of a reagent does not take its place', () => {
+  const text = `compound LiHMDS = CCO\n${KETONE}  charge LiHMDS 1 mmol\n`;
+  const found = suggestionsOf(analyse(text), 'A')![0]!.list.find(
+    ({ option }) => option.reagent.name === 'LiHMDS',
+  )!;
+  expect(found.edits.map((edit) => edit.text).join()).toContain('<');
+});
+
+test('acids are suggested for a protonation', () => {
+  const text = `compound A = CCN(CC)CC
+step A
+  solvent water 20 mL
+  charge A 5 mmol
+  acid phenol 1.1 equiv
+  protonate A
+`;
+  const [one] = suggestionsOf(analyse(text), 'A')!;
+  expect(one!.direction).toBe('protonate');
+  expect(one!.list.map(({ option }) => option.reagent.name)).toContain('acetic acid');
+});
+
+test('a line asks for its own transfer; outside a step there is none', () => {
+  const text = `${KETONE}step B\n  solvent THF 20 mL\n  charge K 1 mmol\n  base LDA 1.1 equiv\n  deprotonate K at :1\n`;
+  const analysed = analyse(text);
+  expect(suggestionsAt(analysed, 6).map(({ step }) => step)).toEqual(['A']);
+  expect(suggestionsAt(analysed, 11).map(({ line }) => line)).toEqual([11]);
+  expect(suggestionsAt(analysed, 0)).toEqual([]);
+  expect(suggestionsOf(analysed, 'Z')).toBeNull();
+});
+
+test('the text has a row for each and says why the others are not there', () => {
+  const [one] = suggestionsOf(analyse(KETONE), 'A', 'all')!;
+  const text = suggestionsText(one!);
+  expect(text).toMatch(/as written: NaOH in water does not go/);
+  expect(text).toMatch(/LDA +1\.10 +THF/);
+  expect(text).toMatch(/attacks something else: n-BuLi \(carbonyl group of K\)/);
+  expect(text).toMatch(/solvents never proposed: .*benzene \(a carcinogen/);
+  expect(text).toMatch(/local rules/);
+});
+
+test('the record is plain data and names every pair once', () => {
+  const [one] = suggestionsOf(analyse(KETONE), 'A')!;
+  const record = suggestionsRecord(one!);
+  expect(JSON.parse(JSON.stringify(record))).toEqual(record);
+  expect(record.suggestions[0]).toMatchObject({ answer: 'yes', edits: expect.any(Array) });
+  const pairs = pairsRecord(one!);
+  const seen = pairs.flatMap(({ reagent, solvents }) => solvents.map((solvent) => `${reagent} ${solvent}`));
+  expect(new Set(seen).size).toBe(seen.length);
+});
