@@ -61,7 +61,8 @@ function dangerAt(row: CautionRow, facts: StepFacts, place: number): Danger | nu
   const range = rangeOf(moment, facts);
   if (row.group === '') {
     const pH = row.gasValue === null ? null : acidity(moment);
-    if (row.gasValue !== null && (pH === null || row.gasValue + (row.gasMargin ?? 0) < pH)) return null;
+    // Without water there is no pH to ask for, and the pair is taken at its word.
+    if (row.gasValue !== null && pH !== null && row.gasValue + (row.gasMargin ?? 0) < pH) return null;
     const share = row.gasValue === null || pH === null ? null : 1 / (1 + 10 ** (pH - row.gasValue));
     return { row, range, share, mol: gasOfPair(row, first, second), pH };
   }
