@@ -6,13 +6,9 @@
 import { createHash } from 'node:crypto';
 import { existsSync, mkdirSync, readFileSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
-import { buildGraph } from '../src/chemistry/build-graph.ts';
-import { neutralForm } from '../src/chemistry/neutral.ts';
-import { siteNames } from '../src/chemistry/site-names.ts';
+import { markedSite, substanceIdentity } from '../src/chemistry/row-keys.ts';
 import { parseSmarts } from '../src/chemistry/smarts.ts';
-import { readSmiles } from '../src/chemistry/smiles.ts';
-import { canonicalKey, molarMass } from '../src/chemistry/toolkit.ts';
-import { foldName } from '../src/tables/names.ts';
+import { foldName } from '../src/tables/fold-name.ts';
 import type { CautionRow, ChoiceRow, Trigger } from '../src/tables/rows.ts';
 import type { FoldedTable } from '../src/tables/tables.ts';
 import { type Cell, type Row, readTable, TableFault } from './read-table.ts';
@@ -92,7 +88,7 @@ function complete(table: string, { line, cells }: Row): Record<string, unknown> 
     if (table === 'reagents' && cells.molarMass === null) row.molarMass = row.mass;
     if (table === 'cautions')
       Object.assign(row, { first: triggersOf(cells.first), second: triggersOf(cells.second) });
-    if (table === 'measured') Object.assign(row, measuredSite(String(cells.smiles)));
+    if (table === 'measured') Object.assign(row, markedSite(String(cells.smiles)));
   } catch (error) {
     throw new TableFault(`${table}.csv:${line}: ${(error as Error).message}`);
   }
@@ -113,40 +109,9 @@ function triggersOf(cell: Cell | undefined): Trigger[] {
   });
 }
 
-/** Key of a substance: the keys of its fragments in order, metals and counterions included. */
+/** Key and mass of a substance; none where it has no one structure. */
 function identity(smiles: Cell): { key: string | null; mass: number | null } {
-  if (typeof smiles !== 'string') return { key: null, mass: null };
-  const graph = graphOf(smiles);
-  const neutral = neutralForm(graph);
-  const keys = neutral.graph.fragments
-    .filter((fragment) => !fragment.every((atom) => neutral.absorbed.has(atom)))
-    .map((fragment) => canonicalKey(neutral.graph, fragment) ?? '?')
-    .sort();
-  return { key: keys.join(' '), mass: molarMass(graph) };
-}
-
-/** Key of the neutral molecule of a measured row and the names of its mapped atoms. */
-function measuredSite(smiles: string): { key: string; atoms: readonly number[]; classes: readonly number[] } {
-  const neutral = neutralForm(graphOf(smiles));
-  const fragment = neutral.graph.fragments.find(
-    (atoms) => !atoms.every((atom) => neutral.absorbed.has(atom)),
-  )!;
-  const names = siteNames(neutral.graph, fragment);
-  const atoms = neutral.graph.atoms.filter(({ mapNumber }) => mapNumber === 1).map(({ index }) => index);
-  if (atoms.length === 0) throw new Error(`${smiles} marks no site with :1`);
-  return {
-    key: canonicalKey(neutral.graph, fragment) ?? '?',
-    atoms,
-    classes: [...new Set(atoms.flatMap((atom) => names.get(atom) ?? []))],
-  };
-}
-
-function graphOf(smiles: string) {
-  const { structure, problem } = readSmiles(smiles);
-  if (structure === undefined) throw new Error(`${smiles}: ${problem.message}`);
-  const built = buildGraph(structure);
-  if (built.graph === undefined) throw new Error(`${smiles}: ${built.problem.message}`);
-  return built.graph;
+  return typeof smiles === 'string' ? substanceIdentity(smiles) : { key: null, mass: null };
 }
 
 interface TriggeredTables {
@@ -187,7 +152,9 @@ function refuseUnknownChoices({ solvents, reagents, choices, electrophiles }: Ch
   const groups = new Set(electrophiles.map(({ id }) => id));
   const faults = choices.flatMap(({ what, usedIn, attacks }) => [
     ...(known.has(what) ? [] : [`choices.csv: ${what} is in no table`]),
-    ...usedIn.filter((place) => !places.has(place)).map((place) => `choices.csv: ${what} in unknown ${place}`),
+    ...usedIn
+      .filter((place) => !places.has(place))
+      .map((place) => `choices.csv: ${what} in unknown ${place}`),
     ...attacks.filter((id) => !groups.has(id)).map((id) => `choices.csv: ${what} attacks unknown ${id}`),
   ]);
   if (faults.length !== 0) throw new TableFault(faults.join('\n'));

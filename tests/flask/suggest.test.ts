@@ -5,7 +5,7 @@ import { choicesAs, solventChoice } from '../../server/src/flask/choices.ts';
 import { judgeTransfer } from '../../server/src/flask/judge.ts';
 import type { Contents, Ingredient } from '../../server/src/flask/state.ts';
 import { type Screening, screen, type Want } from '../../server/src/flask/suggest.ts';
-import { foldName } from '../../server/src/tables/names.ts';
+import { foldName } from '../../server/src/tables/fold-name.ts';
 import { tables } from '../support/tables.ts';
 
 const plain = { reagent: null, solvent: null, assumed: false, qualifier: null } as const;

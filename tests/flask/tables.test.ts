@@ -2,7 +2,7 @@
 import { existsSync, readFileSync } from 'node:fs';
 import { parse } from 'csv-parse/sync';
 import { expect, test } from 'vitest';
-import { foldName } from '../../server/src/tables/names.ts';
+import { foldName } from '../../server/src/tables/fold-name.ts';
 import { readTable } from '../../server/tools/read-table.ts';
 
 const sources = new Set(

@@ -8,12 +8,12 @@
 import { constantsIn as constantsOf } from '../chemistry/constants.ts';
 import type { Couple } from '../chemistry/couple.ts';
 import type { Tables } from '../tables/tables.ts';
+import type { Participation } from './flask-acid.ts';
 import { rateOf } from './kinetics.ts';
 import { ledgerOf, type Transfer } from './ledger.ts';
 import { normalBelow } from './numbers.ts';
 import { chargedShare, type Solved, solveContents } from './solve.ts';
 import type { ConstantsIn, Contents, Ingredient, Medium, Site, Verdict } from './state.ts';
-import type { Participation } from './system.ts';
 import { differenceSd } from './uncertainty.ts';
 
 /** What one ingredient loses of itself to another by taking (giving) protons. */

@@ -8,8 +8,8 @@
 import type { Constant, Couple } from '../chemistry/couple.ts';
 import type { Tables } from '../tables/tables.ts';
 import { formsIonPair } from './allowances/ion-pair.ts';
+import type { FlaskAcid } from './flask-acid.ts';
 import type { ConstantsIn, Contents, Medium, Site } from './state.ts';
-import type { FlaskAcid } from './system.ts';
 
 /** Share of the amine's amount from which another, stronger base is the one that acts. */
 const ACTING_SHARE = 0.05;

@@ -17,6 +17,7 @@ import { formsIonPair, LEAST_ION_PAIR_SD } from './allowances/ion-pair.ts';
 import { isHelpedByMetal } from './allowances/lewis-acid.ts';
 import { hasPhaseTransfer } from './allowances/phase-transfer.ts';
 import { HIGHEST_PH, LOWEST_PH, solveBalance, stepShares } from './balance.ts';
+import type { FlaskSystem } from './flask-acid.ts';
 import { constantInWater } from './ion-pairing.ts';
 import { rateOf } from './kinetics.ts';
 import { isSolidBase } from './medium.ts';
@@ -27,7 +28,6 @@ import { heldInSalt } from './salts.ts';
 import { mediumFor, stepsIn } from './scale-choice.ts';
 import { chargedShare, type Solved } from './solve.ts';
 import type { Allowance, ConstantsIn, Contents, Ingredient, Site, Verdict } from './state.ts';
-import type { FlaskSystem } from './system.ts';
 import { differenceSd } from './uncertainty.ts';
 
 export interface Intent {

@@ -5,7 +5,7 @@
  * Invariant: the first row that fits holds; a couple that no row names moves at once.   (tests/flask/fates.test.ts)
  */
 import type { Couple } from '../chemistry/couple.ts';
-import { foldName } from '../tables/names.ts';
+import { foldName } from '../tables/fold-name.ts';
 import type { KineticsRow } from '../tables/rows.ts';
 import type { Tables } from '../tables/tables.ts';
 import type { Contents, Ingredient } from './state.ts';

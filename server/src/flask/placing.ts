@@ -6,9 +6,9 @@
  */
 import type { Couple, ProtonStep } from '../chemistry/couple.ts';
 import type { Tables } from '../tables/tables.ts';
+import type { FlaskAcid, FlaskSystem } from './flask-acid.ts';
 import { chargedShare, type Solved, solveContents, solveSystem } from './solve.ts';
 import type { ConstantsIn, Contents, Ingredient } from './state.ts';
-import type { FlaskAcid, FlaskSystem } from './system.ts';
 
 export type Direction = 'deprotonate' | 'protonate';
 

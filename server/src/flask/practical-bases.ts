@@ -7,9 +7,9 @@
  */
 import type { Constant, Couple } from '../chemistry/couple.ts';
 import type { Tables } from '../tables/tables.ts';
+import type { FlaskAcid } from './flask-acid.ts';
 import { isCalled } from './kinetics.ts';
 import type { Ingredient, Medium } from './state.ts';
-import type { FlaskAcid } from './system.ts';
 
 /** Below the ceiling failure is 20 % likely at most, 3 units above it 80 % at least: a normal line through both. */
 const SURFACE_DOUBT = { above: 1.5, sd: 1.78 };

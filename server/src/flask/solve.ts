@@ -12,10 +12,11 @@ import { constantsIn as constantsOf } from '../chemistry/constants.ts';
 import type { Tables } from '../tables/tables.ts';
 import { activityVariance, mixedConstants } from './activity.ts';
 import { formShares, HIGHEST_PH, LOWEST_PH, type Polyprotic, solveBalance, stepShares } from './balance.ts';
+import type { FlaskAcid, FlaskSystem, Participation } from './flask-acid.ts';
 import { isCalled } from './kinetics.ts';
 import { mediumFor } from './scale-choice.ts';
 import type { ConstantsIn, Contents, CoupleState, FlaskState, Ingredient, Medium } from './state.ts';
-import { type FlaskAcid, type FlaskSystem, type Participation, systemOf } from './system.ts';
+import { systemOf } from './system.ts';
 
 const MOST_TURNS = 100;
 /** mol/L within which the ionic strength has settled; it moves the pH by less than 1e-10. */

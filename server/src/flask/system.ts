@@ -13,6 +13,7 @@ import type { Tables } from '../tables/tables.ts';
 import { PKA_OF_HYDRONIUM, pKaOfWater } from './balance.ts';
 import { coupledSteps } from './carbon-sites.ts';
 import { distribution } from './distribution.ts';
+import type { FlaskAcid, FlaskSystem, Participation } from './flask-acid.ts';
 import { withIonPairs } from './ion-pairing.ts';
 import { rateOf } from './kinetics.ts';
 import { isSolidBase, isWater, usable } from './medium.ts';
@@ -22,41 +23,6 @@ import { stepsIn } from './scale-choice.ts';
 import type { ConstantsIn, Contents, Ingredient, Medium } from './state.ts';
 import { atTemperature } from './temperature.ts';
 import { pKwOfLiquid } from './water-constant.ts';
-
-/** One component of one ingredient with its protons. */
-export interface FlaskAcid {
-  readonly ingredient: number;
-  readonly component: number;
-  /** In the order in which the protons leave, lowest constant first. */
-  readonly steps: readonly ProtonStep[];
-  /** Added to each step's value for the shares of the layers and for ion pairs, lowest step first. */
-  readonly shifts: readonly number[];
-  readonly amount: number;
-  readonly protonsCharged: number;
-  /** Charge of the form that holds every proton. */
-  readonly fullCharge: number;
-  readonly gas: { readonly name: string; readonly protons: number; readonly most: number } | null;
-  /** Belongs to the solvent that governs. */
-  readonly isSolvent: boolean;
-  /** The solvent's own ion or molecule from another ingredient: hydroxide in water. */
-  readonly isSolventIon: boolean;
-}
-
-export interface FlaskSystem {
-  readonly acids: readonly FlaskAcid[];
-  /** Sum of amount × charge² of ions without protons of their own, mol. */
-  readonly spectatorCharges: number;
-  /** pKw where water governs. */
-  readonly pKw: number | null;
-}
-
-/** Which couples take part besides those that always do. */
-export interface Participation {
-  /** Couples that somebody means to move, however slow they are. */
-  readonly intended?: readonly { readonly ingredient: number; readonly couple: Couple }[];
-  /** An organometallic is about, which adds to carbonyl groups rather than taking the proton beside them. */
-  readonly sparingCarbonyls?: boolean;
-}
 
 /** On the DMSO scale, from which an organometallic rather adds or does nothing than take a proton from carbon. */
 const SPARED_FROM = 20;

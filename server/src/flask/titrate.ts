@@ -11,11 +11,12 @@ import { constantsIn as constantsOf } from '../chemistry/constants.ts';
 import type { Tables } from '../tables/tables.ts';
 import { mixedConstants } from './activity.ts';
 import { formShares, gasLeft, type Polyprotic, protonExcess } from './balance.ts';
+import type { FlaskSystem } from './flask-acid.ts';
 import { mediumOf } from './medium.ts';
 import { fallingRoot } from './numbers.ts';
 import { solveFlask } from './solve.ts';
 import type { ConstantsIn, Contents, FlaskState, Ingredient } from './state.ts';
-import { type FlaskSystem, systemOf } from './system.ts';
+import { systemOf } from './system.ts';
 
 export interface Titration {
   /** mol needed; null where no amount reaches the pH. */

@@ -6,7 +6,7 @@
  *  1. Depends only on the block, the definitions it mentions, and what it goes on from.   (tests/route/resolve.test.ts)
  *  2. Lines are relative to the step's first line.
  */
-import { foldName } from '../tables/names.ts';
+import { foldName } from '../tables/fold-name.ts';
 import type { Block } from './document.ts';
 import { type Basis, doseOf, liquidVolume, molarMassOf, USUAL_CONCENTRATION } from './dose.ts';
 import { type Before, basisOf, type Draft, draftsOf, type StepScope } from './draft.ts';

@@ -3,13 +3,9 @@
  *
  * Knows: rows.  Must not know: plans, structures.
  */
+import { foldName } from './fold-name.ts';
 import type { ReagentRow, SolventRow } from './rows.ts';
 import type { Tables } from './tables.ts';
-
-/** A name without what writers vary: case, blanks, hyphens, dots, and the sign between the parts of a salt. */
-export function foldName(text: string): string {
-  return text.toLowerCase().replace(/[\s\-‐‑–−.·*•'’′]+/g, '');
-}
 
 export interface FoundName {
   /** How many of the words belong to the name. */

@@ -4,7 +4,7 @@
  * Knows: rows.  Must not know: what they mean, where they are stored.
  * Invariant: reading works out no key and parses no pattern; the build has done both.
  */
-import { foldName } from './names.ts';
+import { foldName } from './fold-name.ts';
 import type {
   ActivationRow,
   CautionRow,
@@ -74,7 +74,33 @@ export interface Tables extends Built {
 
 /** Indexes the generated tables. */
 export function readTables(json: unknown): Tables {
-  const built = unfolded(json as Readonly<Record<string, unknown>>);
+  return indexed(unfolded(json as Readonly<Record<string, unknown>>));
+}
+
+/** Rows of a house's own, which come before those of the tables. */
+export interface HouseRows {
+  readonly measured: readonly MeasuredRow[];
+  readonly reagents: readonly ReagentRow[];
+  readonly solvents: readonly SolventRow[];
+}
+
+/** The tables with the house's own rows in front; `mark` tells this set of rows from every other. */
+export function withHouseRows(
+  tables: Tables,
+  { measured, reagents, solvents }: HouseRows,
+  mark: string,
+): Tables {
+  return indexed({
+    ...tables,
+    version: `${tables.version}+${mark}`,
+    measured: [...measured, ...tables.measured],
+    reagents: [...reagents, ...tables.reagents],
+    solvents: [...solvents, ...tables.solvents],
+  });
+}
+
+/** Where two rows share a name or a key, the first one holds. */
+function indexed(built: Built): Tables {
   const nameByFolded = new Map<string, string>();
   let longestName = 1;
   const byName = <Row extends { name: string; synonyms: readonly string[] }>(rows: readonly Row[]) => {
