@@ -10,6 +10,7 @@ import type { Perceived } from '../chemistry/couple.ts';
 import { perceive } from '../chemistry/perceive.ts';
 import { balanceConversion, type Conversion, protonsWanted } from '../flask/convert.ts';
 import { type Intent, judgeTransfer } from '../flask/judge.ts';
+import { ingredientsIn, type Layer } from '../flask/separate.ts';
 import { solveFlask } from '../flask/solve.ts';
 import type { Contents, FlaskState, Ingredient, Role, Verdict } from '../flask/state.ts';
 import { titrateTo } from '../flask/titrate.ts';
@@ -18,6 +19,7 @@ import type {
   AdjustStatement,
   Amount,
   ConvertStatement,
+  KeepStatement,
   SolventStatement,
   Statement,
   Step,
@@ -53,6 +55,8 @@ class Filling {
   private readonly adjustments: AdjustFact[] = [];
   private ingredients: Ingredient[] = [];
   private temperature: number;
+  /** The layer that the last extraction or wash was made for. */
+  private wanted: Layer | null = null;
   private next = 0;
   private readonly step: Step;
   private readonly tables: Tables;
@@ -64,8 +68,7 @@ class Filling {
     this.settings = settings;
     this.temperature = before?.left.temperature ?? ROOM;
     const layer = step.continues?.layer ?? null;
-    for (const one of before?.left.ingredients ?? []) {
-      if (!staysIn(layer, one)) continue;
+    for (const one of before === null ? [] : layerLeft(before, layer, tables)) {
       const ingredient = { ...one, id: this.next++ };
       this.ingredients.push(ingredient);
       this.additions.push({ ingredient, statement: null, range: step.range, substance: null });
@@ -85,7 +88,20 @@ class Filling {
         this.add(statement, statement.substance, statement.amount, roleOf(statement));
         break;
       case 'wash':
-        this.add(statement, statement.substance, statement.amount, 'quench');
+        this.drawOff(this.wanted ?? 'organic');
+        this.addLayer(statement, statement.substance, statement.amount);
+        this.wanted = 'organic';
+        break;
+      case 'extract':
+        if (this.wanted !== null) this.drawOff(this.wanted);
+        this.addLayer(statement, statement.into, statement.amount);
+        this.wanted = isAqueous(statement.into) ? 'aqueous' : 'organic';
+        break;
+      case 'keep':
+        this.keep(statement);
+        return;
+      case 'isolate':
+        if (this.wanted !== null) this.drawOff(this.wanted);
         break;
       case 'temperature':
         this.temperature = statement.to === 'reflux' ? this.boilingPoint() : statement.to;
@@ -95,6 +111,8 @@ class Filling {
         this.judge(statement);
         break;
       case 'adjust':
+        // What has been extracted into water is worked on there.
+        if (this.wanted === 'aqueous') this.drawOff('aqueous');
         this.adjust(statement);
         break;
       case 'convert':
@@ -160,6 +178,47 @@ class Filling {
     for (const { solvent, volume } of amount.carriers) {
       this.put(statement, solvent, { role: 'solvent', mol: 0, volume, amount });
     }
+  }
+
+  /** Brings a second layer in: a solvent, water, or a reagent dissolved in water. */
+  private addLayer(statement: Statement, substance: Substance, amount: Amount): void {
+    if (substance.solvent !== null && amount.carriers.length === 0) {
+      const volume = amount.volume ?? this.largestVolume();
+      this.put(statement, substance, { role: 'solvent', mol: 0, volume, amount });
+      return;
+    }
+    this.add(statement, substance, amount, 'quench');
+    const hasWater = amount.carriers.some(({ solvent }) => solvent.solvent?.kind === 'water');
+    const water = this.tables.solventByName.get('water');
+    // A volume of brine or of ammonium chloride is a volume of water.
+    if (hasWater || water === undefined || amount.volume === null) return;
+    const asWater: Substance = {
+      ...substance,
+      name: water.name,
+      smiles: water.smiles,
+      reagent: null,
+      solvent: water,
+    };
+    this.put(statement, asWater, { role: 'solvent', mol: 0, volume: amount.volume, amount });
+  }
+
+  private largestVolume(): number | null {
+    const volumes = this.ingredients.flatMap(({ role, volume }) =>
+      role === 'solvent' && volume !== null ? [volume] : [],
+    );
+    return volumes.length === 0 ? null : Math.max(...volumes);
+  }
+
+  /** Goes on with one of two layers; with one layer nothing happens. */
+  private drawOff(layer: Layer): void {
+    this.ingredients = [...ingredientsIn(layer, this.contents(), this.tables, constantsIn)];
+    this.wanted = null;
+  }
+
+  /** The moment of a `keep` shows both layers, what follows only the one that is kept. */
+  private keep(statement: KeepStatement): void {
+    this.moments.push(this.moment(statement));
+    this.drawOff(statement.layer);
   }
 
   private put(
@@ -357,6 +416,11 @@ class Filling {
   }
 }
 
+/** Whether a layer brought in is water or something dissolved in it. */
+export function isAqueous({ solvent, reagent }: Substance): boolean {
+  return solvent === null ? reagent !== null : solvent.kind === 'water';
+}
+
 function roleOf({ keyword, substance }: AddStatement): Role {
   if (keyword === 'charge')
     return substance.kind === 'compound' || substance.kind === 'structure' ? 'compound' : 'reagent';
@@ -376,11 +440,7 @@ function couplesAt(
   return at;
 }
 
-/** What a layer keeps: the organic one what has no charge and is not water, the aqueous one the rest. */
-function staysIn(layer: 'organic' | 'aqueous' | null, { role, solvent, molecule }: Ingredient): boolean {
-  if (layer === null) return true;
-  const isWater = solvent?.kind === 'water';
-  if (role === 'solvent') return (layer === 'aqueous') === isWater;
-  const ionic = molecule?.components.some(({ charge }) => charge !== 0) ?? false;
-  return layer === 'organic' ? role === 'compound' || (!ionic && role !== 'quench') : true;
+/** What a step goes on with: the layer that it names, or all that the one before left. */
+function layerLeft({ left }: StepFacts, layer: Layer | null, tables: Tables): readonly Ingredient[] {
+  return layer === null ? left.ingredients : ingredientsIn(layer, left, tables, constantsIn);
 }

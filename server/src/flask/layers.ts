@@ -63,7 +63,7 @@ export function organicShare(logD: number, organic: number, water: number, porti
 }
 
 /** The largest component that holds carbon; counter-ions are not what a chemist extracts. */
-function mainComponent({ components, graph }: Perceived): number | null {
+export function mainComponent({ components, graph }: Perceived): number | null {
   let best: { index: number; atoms: number } | null = null;
   for (const { index, atoms } of components) {
     const carbons = atoms.filter((atom) => graph?.atoms[atom]?.element === 'C').length;

@@ -68,7 +68,8 @@ export const STATEMENTS: Readonly<Record<string, StatementReader>> = {
   keep: (reader) => {
     const name = readName(reader, 'A compound', ['in']);
     reader.expectWord('in', 'link');
-    return { keyword: 'keep', name, layer: reader.expectOneOf(LAYERS, 'value').value };
+    const { value, span } = reader.expectOneOf(LAYERS, 'value');
+    return { keyword: 'keep', name, layer: value, layerSpan: span };
   },
   isolate: (reader) => {
     const name = readName(reader, 'A compound', ['as']);

@@ -142,6 +142,7 @@ export interface KeepStatement extends Line {
   readonly keyword: 'keep';
   readonly substance: Substance;
   readonly layer: 'organic' | 'aqueous';
+  readonly layerRange: Range;
 }
 export interface IsolateStatement extends Line {
   readonly keyword: 'isolate';

@@ -131,7 +131,15 @@ function finish(each: Draft, basis: Basis, stepScope: StepScope, problems: TextP
     case 'temperature':
       return [{ ...at, keyword: 'temperature', from: syntax.from, to: syntax.to }];
     case 'keep':
-      return [{ ...at, keyword: 'keep', substance: named!.substance, layer: syntax.layer }];
+      return [
+        {
+          ...at,
+          keyword: 'keep',
+          substance: named!.substance,
+          layer: syntax.layer,
+          layerRange: rangeOf(line, syntax.layerSpan),
+        },
+      ];
     case 'isolate': {
       const stateRange = rangeOf(line, syntax.stateSpan);
       return [{ ...at, keyword: 'isolate', substance: named!.substance, state: syntax.state, stateRange }];

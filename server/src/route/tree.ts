@@ -147,7 +147,12 @@ export type Syntax =
       readonly into: NameNode;
       readonly amounts: readonly AmountNode[];
     }
-  | { readonly keyword: 'keep'; readonly name: NameNode; readonly layer: 'organic' | 'aqueous' }
+  | {
+      readonly keyword: 'keep';
+      readonly name: NameNode;
+      readonly layer: 'organic' | 'aqueous';
+      readonly layerSpan: Span;
+    }
   | {
       readonly keyword: 'isolate';
       readonly name: NameNode;
