@@ -104,11 +104,9 @@ interface Record_ {
 
 /** One-site molecules, and of others the step that leaves every other site neutral. */
 export function readCalibration(file: string): CalibrationRow[] {
-  const records = parse(readFileSync(file, 'utf8'), {
-    columns: true,
-    bom: true,
-    relax_column_count: true,
-  }) as Record_[];
+  const records = (
+    parse(readFileSync(file, 'utf8'), { columns: true, bom: true, relax_column_count: true }) as Record_[]
+  ).map(asMeasured);
   const outermost = new Map<string, number>();
   for (const record of records) {
     const key = `${record.kind} ${record.smiles}`;
@@ -141,6 +139,11 @@ export function readCalibration(file: string): CalibrationRow[] {
 /** A fifth of all molecules, by the hash of their text, takes no part in any fit. */
 export function isHeldOut(smiles: string): boolean {
   return Number(BigInt(`0x${createHash('md5').update(smiles).digest('hex')}`) % 5n) === 0;
+}
+
+/** A first constant that is called a base's is an acid's: the constants of bases are named after the conjugate acid. */
+function asMeasured(record: Record_): Record_ {
+  return record.kind === 'base' && record.pka_type?.startsWith('pK1') ? { ...record, kind: 'acid' } : record;
 }
 
 function isSingle(record: Record_): boolean {

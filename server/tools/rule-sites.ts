@@ -5,6 +5,7 @@
  */
 import { readFileSync } from 'node:fs';
 import { parse } from 'csv-parse/sync';
+import { countedSites } from '../src/chemistry/boron.ts';
 import { buildGraph } from '../src/chemistry/build-graph.ts';
 import type { EstimatorTables, ParentRow } from '../src/chemistry/estimate.ts';
 import type { Graph } from '../src/chemistry/graph.ts';
@@ -92,11 +93,25 @@ export function sitesByRule(
       if (known === undefined || known.rule.priority < rule.priority) best.set(key, { atom, rule });
     }
   }
+  const counted = new Set(
+    (['acid', 'base'] as const).flatMap((kind) => {
+      const ofKind = [...best.values()].filter(({ rule }) => rule.kind === kind);
+      const families = new Map(ofKind.map(({ atom, rule }) => [atom, rule.family]));
+      const kept = countedSites(
+        graph,
+        [...families.keys()],
+        (atom) => families.get(atom)!,
+        () => false,
+      );
+      return kept.map((atom) => `${kind} ${atom}`);
+    }),
+  );
   const classes = new Map<number, number>();
   for (const fragment of graph.fragments)
     for (const [atom, rank] of symmetryClasses(graph, fragment)) classes.set(atom, rank);
   const groups = new Map<string, { atom: number; rule: Rule; equals: number[] }>();
   for (const { atom, rule } of best.values()) {
+    if (!counted.has(`${rule.kind} ${atom}`)) continue;
     const key = `${rule.kind} ${classes.get(atom)}`;
     const known = groups.get(key);
     if (known === undefined) groups.set(key, { atom, rule, equals: [atom] });

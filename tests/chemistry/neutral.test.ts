@@ -109,15 +109,36 @@ test.each([
   'Cn1cc[n+](C)c1',
 ])('%s stays as it is drawn', (drawn) => {
   const graph = graphOf(drawn)!;
-  expect(neutralForm(graph)).toMatchObject({ graph, added: graph.atoms.map(() => 0), enolates: [] });
+  expect(neutralForm(graph)).toMatchObject({ graph, added: graph.atoms.map(() => 0) });
 });
 
-test('an enolate drawn on oxygen is the anion of its enol, and the place is named', () => {
-  expect(keyOf('CC([O-])=CC.[Li+]')).toBe(keyOf('CC(O)=CC.[Li+]'));
-  expect(addedOf('CC([O-])=CC.[Li+]')).toEqual({ 2: 1 });
-  expect(formOf('CC([O-])=CC.[Li+]').enolates).toEqual([{ oxygen: 2, carbon: 3 }]);
-  expect(formOf('[O-]c1ccccc1').enolates).toEqual([]);
-  expect(formOf('CC([O-])=O').enolates).toEqual([]);
+test.each([
+  ['CC([O-])=CC.[Li+]', 'CC(=O)CC', 3],
+  ['[Na+].CCOC([O-])=C', 'CCOC(C)=O', 6],
+  ['CC([O-])=CC(C)=O', 'CC(=O)CC(C)=O', 3],
+  ['C=C([O-])N(C)C', 'CC(=O)N(C)C', 0],
+  ['[Li]OC1=CCCCC1', 'O=C1CCCCC1', 3],
+  ['[O-]C1=CC(=O)CC(C)(C)C1', 'O=C1CC(=O)CC(C)(C)C1', 2],
+  ['[O-]C=Cc1ccccc1', 'O=CCc1ccccc1', 2],
+])('the enolate %s is the anion of %s, its proton missing on carbon', (enolate, acid, carbon) => {
+  expect(keyOf(enolate).split(' ')).toContain(keyOf(acid));
+  expect(addedOf(enolate)).toEqual({ [carbon]: 1 });
+});
+
+test.each([
+  ['[O-]C1=C(O)C(=O)OC1CO', 'OC1=C(O)C(=O)OC1CO'],
+  ['[O-]C1=CC(=O)OC1', 'OC1=CC(=O)OC1'],
+  ['CC1=C([O-])C(=O)CC1', 'CC1=C(O)C(=O)CC1'],
+  ['[O-]c1ccccc1', 'Oc1ccccc1'],
+  ['CC([O-])=O', 'CC(O)=O'],
+])('%s is the anion of the hydroxyl group of %s', (anion, acid) => {
+  expect(keyOf(anion)).toBe(keyOf(acid));
+});
+
+test('a borate is its boric acid with one proton less, and water', () => {
+  expect(keyOf('[Na+].[B-](O)(O)(O)O').split(' ').sort()).toEqual(keyOf('[Na+].OB(O)O.O').split(' ').sort());
+  expect(addedOf('[B-](O)(O)(O)c1ccccc1')).toEqual({ 2: 1 });
+  expect(addedOf('F[B-](F)(F)c1ccccc1')).toEqual({});
 });
 
 test('explicit hydrogens make no difference, and their atoms stay behind', () => {

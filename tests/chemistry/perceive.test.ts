@@ -39,7 +39,12 @@ test.each([
   ['N=[N+]=[N-]', '[Na+].[N-]=[N+]=[N-]', 'hydrazoic-acid'],
   ['F', '[Cs+].[F-]', 'hydrogen-fluoride'],
   ['O', '[K+].[OH-]', 'water'],
-  ['[HH]', '[Na+].[H-]', 'dihydrogen-atom'],
+  ['[HH]', '[Na+].[H-]', 'dihydrogen'],
+  ['[HH]', '[NaH]', 'dihydrogen'],
+  ['O=C1CCCCC1', '[Li]OC1=CCCCC1', 'ketone-ch'],
+  ['CCOC(C)=O', '[Na+].CCOC([O-])=C', 'ester-ch'],
+  ['OB(O)O', '[Na+].O[B-](O)(O)O', 'boric-acid'],
+  ['OB(O)c1ccccc1', '[K+].O[B-](O)(O)c1ccccc1', 'boronic-acid'],
 ])('%s and %s are one molecule, with and without its proton', (acid, salt, group) => {
   const bare = see(salt).couples.filter((couple) => couple.group === group && !couple.holdsProton);
   expect(bare).toHaveLength(1);
@@ -60,6 +65,25 @@ test.each([
   expect(only(base, group).holdsProton).toBe(false);
   expect(only(acid, group).holdsProton).toBe(true);
   expect(see(acid).key).toBe(see(base).key);
+});
+
+test('a hydride written as one atom gives as many hydride ions as it has hydrogens', () => {
+  for (const [drawn, count] of [
+    ['[LiH]', 1],
+    ['[NaH]', 1],
+    ['[CaH2]', 2],
+  ] as const) {
+    const { couples, graph } = see(drawn);
+    const hydrides = couples.filter(({ group, holdsProton }) => group === 'dihydrogen' && !holdsProton);
+    expect(hydrides.flatMap(({ equivalents }) => equivalents).length, drawn).toBe(count);
+    expect(graph!.atoms[0]!.charge).toBe(count);
+  }
+});
+
+test('a boric acid gives one proton for each boron, and a mark chooses among its hydroxyl groups', () => {
+  expect(only('OB(O)O', 'boric-acid').equivalents).toHaveLength(1);
+  expect(only('OB(O)c1ccc(cc1)B(O)O', 'boronic-acid').equivalents).toHaveLength(2);
+  expect(only('OB([OH:1])c1ccccc1', 'boronic-acid').atom).toBe(2);
 });
 
 test('a zwitterion has the couples of its neutral drawing, with the proton elsewhere', () => {

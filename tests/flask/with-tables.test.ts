@@ -4,7 +4,7 @@ import { perceive } from '../../server/src/chemistry/perceive.ts';
 import { judgeTransfer } from '../../server/src/flask/judge.ts';
 import { solveFlask } from '../../server/src/flask/solve.ts';
 import type { Contents, Ingredient } from '../../server/src/flask/state.ts';
-import { foldName } from '../../server/src/tables/names.ts';
+import { foldName } from '../../server/src/tables/fold-name.ts';
 import { tables } from '../support/tables.ts';
 
 const plain = { volume: null, reagent: null, solvent: null, assumed: false, qualifier: null } as const;
@@ -107,3 +107,26 @@ test.each([
   };
   expect(Math.abs(solveFlask(contents, tables).pH! - published)).toBeLessThan(0.02);
 });
+
+// The same recommendations; the salts as a bottle holds them.
+test.each([
+  ['phosphate 1:1', 6.865, { '[K+].OP(=O)(O)[O-]': 0.025, '[Na+].[Na+].OP(=O)([O-])[O-]': 0.025 }],
+  ['phosphate 1:3.5', 7.413, { '[K+].OP(=O)(O)[O-]': 0.008695, '[Na+].[Na+].OP(=O)([O-])[O-]': 0.03043 }],
+  ['citrate', 3.776, { '[K+].O=C(O)CC(O)(CC(=O)O)C(=O)[O-]': 0.05 }],
+  ['citrate, charged elsewhere', 3.776, { '[K+].OC(=O)CC(O)(C(=O)O)CC(=O)[O-]': 0.05 }],
+  ['borax', 9.18, { 'OB(O)O': 0.02, '[Na+].[B-](O)(O)(O)O': 0.02 }],
+  ['borax, as metaborate', 9.18, { 'OB(O)O': 0.02, '[Na+].OB(O)[O-]': 0.02 }],
+  ['carbonate', 10.012, { '[Na+].OC(=O)[O-]': 0.025, '[Na+].[Na+].[O-]C(=O)[O-]': 0.025 }],
+] as [string, number, Record<string, number>][])(
+  '%s made of its salts has pH %d within 0.02',
+  (_, published, salts) => {
+    const contents: Contents = {
+      ingredients: [
+        solvent('water', 0),
+        ...Object.entries(salts).map(([smiles, mol], place) => compound(smiles, place + 1, mol)),
+      ],
+      temperature: 298.15,
+    };
+    expect(Math.abs(solveFlask(contents, tables).pH! - published)).toBeLessThan(0.02);
+  },
+);

@@ -15,6 +15,8 @@ export interface Core {
   readonly anchor: number;
   /** Bonds between site and anchor; 0 where the site is part of the ring. */
   readonly reach: number;
+  /** Neighbour of the site through which the ring system is met; −1 where the site is part of the ring. */
+  readonly way: number;
   /** Place of each ring atom. */
   readonly places: ReadonlyMap<number, string>;
 }
@@ -60,33 +62,38 @@ export function coresOf(graph: Graph, site: number): Core[] {
   for (const atoms of ringSystems(graph)) {
     const set = new Set(atoms);
     if (set.has(site)) {
-      cores.push({ atoms: set, anchor: site, reach: 0, places: placesIn(graph, set, site) });
+      cores.push({ atoms: set, anchor: site, reach: 0, way: -1, places: placesIn(graph, set, site) });
       continue;
     }
-    const { anchor, reach } = nearest(graph, set, site);
-    if (anchor !== -1) cores.push({ atoms: set, anchor, reach, places: placesIn(graph, set, anchor) });
+    const { anchor, reach, way } = nearest(graph, set, site);
+    if (anchor !== -1) cores.push({ atoms: set, anchor, reach, way, places: placesIn(graph, set, anchor) });
   }
   return cores.sort((a, b) => a.reach - b.reach);
 }
 
 /** The ring atom that is met first from a site, by a chain outside other aromatic rings. */
-function nearest(graph: Graph, ring: ReadonlySet<number>, site: number): { anchor: number; reach: number } {
+function nearest(
+  graph: Graph,
+  ring: ReadonlySet<number>,
+  site: number,
+): Pick<Core, 'anchor' | 'reach' | 'way'> {
   let front = [site];
-  const seen = new Set(front);
+  const ways = new Map([[site, -1]]);
   for (let reach = 1; reach <= FARTHEST; reach++) {
     const next: number[] = [];
     for (const atom of front) {
       if (graph.atoms[atom]!.aromatic && atom !== site) continue;
       for (const other of graph.atoms[atom]!.neighbours) {
-        if (seen.has(other)) continue;
-        if (ring.has(other)) return { anchor: other, reach };
-        seen.add(other);
+        if (ways.has(other)) continue;
+        const way = atom === site ? other : ways.get(atom)!;
+        if (ring.has(other)) return { anchor: other, reach, way };
+        ways.set(other, way);
         next.push(other);
       }
     }
     front = next;
   }
-  return { anchor: -1, reach: 0 };
+  return { anchor: -1, reach: 0, way: -1 };
 }
 
 /**

@@ -4,7 +4,7 @@
  * Knows: graphs, groups, the terms' values.  Must not know: measured values, plans, flasks.
  * Invariants:
  *  1. The estimate does not depend on how the molecule is written.   (tests/chemistry/estimate.test.ts)
- *  2. Terms that no molecule of the fit has shown widen the sd, never the value.
+ *  2. Terms that few molecules of the fit have shown widen the sd; one that none has shown leaves the value alone.
  * Units: pKa in water at 25 °C, for the couple while all others are neutral.
  * Sources: Hansch, Leo and Taft 1991; fitted to the IUPAC Digitized pKa Dataset v1.0.
  */
@@ -73,14 +73,14 @@ export function estimateInWater(
   let novelty = 0;
   const parts = new Map<string, number>();
   for (const term of terms) {
-    const worth = estimator.values.get(term.name)?.value;
-    if (worth === undefined)
-      novelty += (estimator.variances.get(termClass(term.name)) ?? 0) * term.factor ** 2;
-    else {
-      value += worth * term.factor;
-      const part = partOf(term);
-      parts.set(part, (parts.get(part) ?? 0) + worth * term.factor);
-    }
+    const known = estimator.values.get(term.name);
+    const prior = estimator.variances.get(termClass(term.name)) ?? 0;
+    novelty += prior * doubtLeft(known?.n ?? 0) * term.factor ** 2;
+    if (known === undefined) continue;
+    const worth = known.value * term.factor;
+    value += worth;
+    const part = partOf(term);
+    parts.set(part, (parts.get(part) ?? 0) + worth);
   }
   const statistical = Math.log10(equivalents) * (site.kind === 'acid' ? -1 : 1);
   const sd = Math.sqrt(family.value ** 2 + novelty * (estimator.variances.get('novelty') ?? 1));
@@ -108,6 +108,11 @@ function fromParent(parent: ParentRow | undefined): Constant | null {
     sources: parent.sources,
     hops: [{ what: `value of the group “${parent.name}”`, value: parent.water, sd, sources: parent.sources }],
   };
+}
+
+/** Share of the prior variance of a term that is left once `n` molecules of the fit have shown it. */
+export function doubtLeft(n: number): number {
+  return (1 + n) ** -2;
 }
 
 /** The terms' values by the question that they answer. */

@@ -8,11 +8,12 @@
  *  2. `added` is the number of protons that the reference form has more than the drawing, atom by atom.
  *  3. Bonds to the metals of groups 1 and 2, to zinc, and of carbon to aluminium are split; charges that no proton can
  *     mend stay.
- *  4. An enolate drawn on oxygen is the anion of the enol as drawn, not of the ketone; `enolates` names such places.
+ *  4. An enolate is the anion of its carbonyl compound, on whichever atom the charge is drawn.
  */
 import { buildGraph } from './build-graph.ts';
 import type { Graph } from './graph.ts';
 import type { Atom, Bond, BondSymbol } from './molecule.ts';
+import { type Draft, neighboursOf, redraw } from './redraw.ts';
 
 export interface NeutralForm {
   readonly graph: Graph;
@@ -20,13 +21,6 @@ export interface NeutralForm {
   readonly added: readonly number[];
   /** Explicit hydrogens that became counts of their neighbours. */
   readonly absorbed: ReadonlySet<number>;
-  /** Anions C=C–O−: the oxygen that lacks the proton, and the carbon that would carry it in the ketone. */
-  readonly enolates: readonly Enolate[];
-}
-
-export interface Enolate {
-  readonly oxygen: number;
-  readonly carbon: number;
 }
 
 const SPLIT = new Set(['Li', 'Na', 'K', 'Rb', 'Cs', 'Be', 'Mg', 'Ca', 'Sr', 'Ba', 'Zn']);
@@ -37,17 +31,6 @@ const HYPERVALENT = new Set(['P', 'As', 'Si']);
 /** Elements whose positive charge leaves with a proton. */
 const ONIUM = new Set(['N', 'O', 'S', 'P', 'Se']);
 const SYMBOLS: readonly BondSymbol[] = ['-', '-', '=', '#', '$'];
-
-interface Draft {
-  readonly source: Graph;
-  readonly charges: number[];
-  readonly hydrogens: number[];
-  readonly orders: number[];
-  readonly added: number[];
-  readonly absorbed: Set<number>;
-  /** Rings whose double bonds have to be placed anew. */
-  replace: boolean;
-}
 
 /** The reference form of a graph; the graph itself where no other form can be built. */
 export function neutralForm(source: Graph): NeutralForm {
@@ -62,10 +45,7 @@ export function neutralForm(source: Graph): NeutralForm {
   };
   absorbHydrogens(draft);
   splitMetals(draft);
-  writeYlides(draft);
-  writeOxides(draft);
-  writeNitronates(draft);
-  const enolates = findEnolates(draft);
+  redraw(draft);
   protonateAnions(draft, pairedAnions(draft));
   spreadCarbocations(draft);
   deprotonateCations(draft);
@@ -74,15 +54,8 @@ export function neutralForm(source: Graph): NeutralForm {
   giveFreeProtons(draft);
   const graph = isUnchanged(draft) ? source : rebuild(draft);
   return graph === null
-    ? { graph: source, added: source.atoms.map(() => 0), absorbed: new Set(), enolates: [] }
-    : { graph, added: draft.added, absorbed: draft.absorbed, enolates };
-}
-
-function neighboursOf({ source, orders }: Draft, atom: number): { other: number; bond: number }[] {
-  const { neighbours, bonds } = source.atoms[atom]!;
-  return neighbours
-    .map((other, place) => ({ other, bond: bonds[place]! }))
-    .filter(({ bond }) => orders[bond]! > 0);
+    ? { graph: source, added: source.atoms.map(() => 0), absorbed: new Set() }
+    : { graph, added: draft.added, absorbed: draft.absorbed };
 }
 
 function absorbHydrogens(draft: Draft): void {
@@ -108,77 +81,6 @@ function splitMetals(draft: Draft): void {
     draft.charges[metal]! += order;
     draft.charges[partner]! -= order;
     draft.orders[bond] = 0;
-  });
-}
-
-/** C=P and C=S of ylides become the carbanion beside an onium centre. */
-function writeYlides(draft: Draft): void {
-  for (const { index, element, charge } of draft.source.atoms) {
-    if ((element !== 'P' && element !== 'S') || charge !== 0) continue;
-    const around = neighboursOf(draft, index);
-    const carbon = around.find(
-      ({ other, bond }) => draft.source.atoms[other]!.element === 'C' && draft.orders[bond] === 2,
-    );
-    if (carbon === undefined || draft.source.bonds[carbon.bond]!.aromatic) continue;
-    const carbons = around.filter(({ other }) => draft.source.atoms[other]!.element === 'C').length;
-    if (element === 'P' ? around.length !== 4 : carbons < 3) continue;
-    draft.orders[carbon.bond] = 1;
-    draft.charges[index] = 1;
-    draft.charges[carbon.other]! -= 1;
-  }
-}
-
-/** P+–O− and S+–O− (also N− and C−-free forms) become double bonds. */
-function writeOxides(draft: Draft): void {
-  for (const { index, element } of draft.source.atoms) {
-    if (element !== 'P' && element !== 'S' && element !== 'Cl' && element !== 'Br' && element !== 'I')
-      continue;
-    for (const { other, bond } of neighboursOf(draft, index)) {
-      if (draft.charges[index]! <= 0) break;
-      if (
-        draft.source.atoms[other]!.element !== 'O' ||
-        draft.charges[other] !== -1 ||
-        draft.orders[bond] !== 1
-      )
-        continue;
-      draft.orders[bond] = 2;
-      draft.charges[index]! -= 1;
-      draft.charges[other] = 0;
-    }
-  }
-}
-
-/** C=N+(O−)2 becomes the carbanion of the nitro compound. */
-function writeNitronates(draft: Draft): void {
-  for (const { index, element } of draft.source.atoms) {
-    if (element !== 'N' || draft.charges[index] !== 1) continue;
-    const around = neighboursOf(draft, index);
-    const oxides = around.filter(
-      ({ other }) => draft.source.atoms[other]!.element === 'O' && draft.charges[other] === -1,
-    );
-    const carbon = around.find(
-      ({ other, bond }) => draft.source.atoms[other]!.element === 'C' && draft.orders[bond] === 2,
-    );
-    if (oxides.length !== 2 || carbon === undefined) continue;
-    draft.orders[carbon.bond] = 1;
-    draft.charges[carbon.other]! -= 1;
-    draft.orders[oxides[0]!.bond] = 2;
-    draft.charges[oxides[0]!.other] = 0;
-  }
-}
-
-function findEnolates(draft: Draft): Enolate[] {
-  return draft.source.atoms.flatMap(({ index, element, aromatic }) => {
-    if (element !== 'O' || aromatic || draft.charges[index] !== -1) return [];
-    const around = neighboursOf(draft, index);
-    const carbon = around[0];
-    if (around.length !== 1 || carbon === undefined) return [];
-    const middle = draft.source.atoms[carbon.other]!;
-    if (middle.element !== 'C' || middle.aromatic) return [];
-    const alkene = neighboursOf(draft, carbon.other).find(
-      ({ other, bond }) => draft.orders[bond] === 2 && draft.source.atoms[other]!.element === 'C',
-    );
-    return alkene === undefined ? [] : [{ oxygen: index, carbon: alkene.other }];
   });
 }
 

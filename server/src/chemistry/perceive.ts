@@ -9,9 +9,11 @@
  */
 import { boundedCache } from '../tables/cache.ts';
 import type { GroupRow } from '../tables/rows.ts';
+import { countedSites } from './boron.ts';
 import { buildGraph } from './build-graph.ts';
 import type { Component, Couple, Perceived } from './couple.ts';
 import type { Graph } from './graph.ts';
+import { spellOutHydrides } from './hydrides.ts';
 import { matchSites } from './match.ts';
 import { type NeutralForm, neutralForm } from './neutral.ts';
 import type { Pattern } from './smarts.ts';
@@ -58,7 +60,7 @@ function perceiveAnew(smiles: string, { groups }: PerceptionTables): Perceived {
       problem: { check: 'budget-reached', message, span: { start: 0, end: smiles.length } },
     };
   }
-  const built = buildGraph(structure);
+  const built = buildGraph(spellOutHydrides(structure));
   if (built.graph === undefined) return { ...nothing, problem: built.problem };
   return describe(smiles, built.graph, groups);
 }
@@ -129,9 +131,14 @@ function couplesOf(
   const classes = symmetryClasses(neutral.graph, atoms);
   const grouped = new Map<string, { group: GroupRow; atoms: number[]; holds: boolean }>();
   for (const kind of ['acid', 'base'] as const) {
-    for (const atom of atoms) {
-      const group = rules[kind].get(atom);
-      if (group === undefined) continue;
+    const sites = countedSites(
+      neutral.graph,
+      atoms.filter((atom) => rules[kind].has(atom)),
+      (atom) => rules[kind].get(atom)!.family,
+      (atom) => 0 < neutral.added[atom]!,
+    );
+    for (const atom of sites) {
+      const group = rules[kind].get(atom)!;
       const added = neutral.added[atom]!;
       const holds = kind === 'acid' ? added <= 0 : added < 0;
       const key = `${kind} ${classes.get(atom)} ${holds}`;

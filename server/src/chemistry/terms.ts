@@ -100,7 +100,7 @@ function addCore(
   substituents: Substituents,
   add: Add,
 ): void {
-  const response = REACH_RESPONSE[core.reach] ?? 0.12;
+  const response = (REACH_RESPONSE[core.reach] ?? 0.12) * dulled(graph, site, core.way);
   const line = `${series}.${core.reach}`;
   const kinds = atomKinds(graph);
   let total = 0;
@@ -137,6 +137,26 @@ function addCore(
     add(`crowd:${line}.${ortho.sort().join('.')}`, response / PHENOL_RESPONSE);
   }
   for (const ring of graph.rings) addFusion(graph, core, ring, line, response, add);
+}
+
+/**
+ * Share of an effect that a carbon acid still feels when other acceptors already hold its charge.
+ *
+ * @param way the neighbour of the site through which the effect comes
+ */
+function dulled(graph: Graph, { atom, family }: Site, way: number): number {
+  if (family !== 'carbon-acid') return 1;
+  const kinds = atomKinds(graph);
+  let held = 0;
+  for (const next of graph.atoms[atom]!.neighbours) if (next !== way) held += holdOf(kinds[next]!);
+  return 1 / (1 + held);
+}
+
+/** How much of the charge of a carbanion an acceptor takes up. */
+function holdOf(kind: string): number {
+  if (kind === 'NO2') return 1;
+  if (/^(C=O|C=S|C#N|S\()/.test(kind)) return 0.3;
+  return 0;
 }
 
 interface Standing {
@@ -263,6 +283,7 @@ function addChain(
   const inCore = new Set(cores.flatMap(({ atoms }) => [...atoms]));
   const distance = new Map([[site.atom, 0]]);
   const conjugated = new Set([site.atom]);
+  const shares = new Map(graph.atoms[site.atom]!.neighbours.map((next) => [next, dulled(graph, site, next)]));
   let front = [site.atom];
   for (let d = 1; d <= LONGEST_CHAIN && front.length !== 0; d++) {
     const next: number[] = [];
@@ -278,7 +299,9 @@ function addChain(
         const fall = FALL_OFF ** (d - 1);
         // What sits on a site drives it hard; what acts from farther away does so in every family alike.
         const direct = d === 1 || (d === 2 && conjugated.has(other));
-        const share = direct ? 1 : Math.min(1, FAR_RESPONSE / answer);
+        if (d !== 1) shares.set(other, shares.get(atom)!);
+        const dull = d === 1 && holdOf(kinds[other]!) !== 0 ? 1 : shares.get(other)!;
+        const share = dull * (direct ? 1 : Math.min(1, FAR_RESPONSE / answer));
         add(`chain:*.${kinds[other]}`, 3 * fall * answer * share);
         add(`chain:${series}.${kinds[other]}`, 3 * fall * share);
         add(`chain${path}:${series}.${d}.${kinds[other]}`, share);
