@@ -18,6 +18,8 @@ const common = {
   logLevel: 'warning',
   absWorkingDir: root,
   legalComments: 'none',
+  // Its other form asks for its own parts by names that no bundle can follow.
+  alias: { 'jsonc-parser': 'jsonc-parser/lib/esm/main.js' },
 };
 /** Some packages ask for the address of their own file, which a bundle of this format has to be told. */
 const ownAddress = "const ownAddress=require('node:url').pathToFileURL(__filename).href;";
@@ -29,7 +31,12 @@ const node = {
   define: { 'import.meta.url': 'ownAddress' },
   banner: { js: ownAddress },
 };
-const browser = { ...common, platform: 'browser', target: 'es2022' };
+const browser = {
+  ...common,
+  platform: 'browser',
+  target: 'es2022',
+  alias: { ...common.alias, 'csv-parse/sync': 'csv-parse/browser/esm/sync' },
+};
 
 /** Bundles one of the tools and runs it on the project. */
 async function run(tool) {

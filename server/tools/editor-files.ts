@@ -3,6 +3,7 @@
  *
  * Knows: vocabulary, settings.  Must not know: disks; it is handed what it has to change.
  */
+import { schemaText } from '../src/answers/configuration-schema.ts';
 import {
   KEYWORD_PAGES,
   LAYERS,
@@ -26,6 +27,7 @@ export function editorFiles(read: (path: string) => string): MadeFile[] {
   return [
     { path: 'client/syntaxes/lyate.tmLanguage.json', text: print(planGrammar()) },
     { path: 'client/syntaxes/lyate-in-markdown.tmLanguage.json', text: print(markdownGrammar()) },
+    { path: 'data/schema/lyate.json', text: schemaText() },
     { path: 'package.json', text: print(withSettings(JSON.parse(read('package.json')))) },
   ];
 }

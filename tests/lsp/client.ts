@@ -47,6 +47,7 @@ export async function bundle(entry: string, outfile: string): Promise<string> {
     logLevel: 'warning',
     define: { 'import.meta.url': 'ownAddress' },
     banner: { js: "const ownAddress=require('node:url').pathToFileURL(__filename).href;" },
+    alias: { 'jsonc-parser': 'jsonc-parser/lib/esm/main.js' },
     entryPoints: [entry],
     outfile,
   });

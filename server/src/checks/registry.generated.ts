@@ -6,6 +6,7 @@ import acidNotTakenUp from './acid-not-taken-up.ts';
 import acidShort from './acid-short.ts';
 import amountsDisagree from './amounts-disagree.ts';
 import atomWithoutSource from './atom-without-source.ts';
+import badConfiguration from './bad-configuration.ts';
 import badUnit from './bad-unit.ts';
 import badUse from './bad-use.ts';
 import baseExcess from './base-excess.ts';
@@ -15,7 +16,9 @@ import budgetReached from './budget-reached.ts';
 import checkFailed from './check-failed.ts';
 import definedTwice from './defined-twice.ts';
 import gasRelease from './gas-release.ts';
+import heatOfNeutralisation from './heat-of-neutralisation.ts';
 import impossibleValence from './impossible-valence.ts';
+import keepContradicts from './keep-contradicts.ts';
 import levelled from './levelled.ts';
 import missingAmount from './missing-amount.ts';
 import noRule from './no-rule.ts';
@@ -23,6 +26,7 @@ import notABase from './not-a-base.ts';
 import notAnAcid from './not-an-acid.ts';
 import otherSiteFirst from './other-site-first.ts';
 import pHOutOfReach from './pH-out-of-reach.ts';
+import quenchShort from './quench-short.ts';
 import reagentEatenByProton from './reagent-eaten-by-proton.ts';
 import runawayPair from './runaway-pair.ts';
 import siteNotFound from './site-not-found.ts';
@@ -40,6 +44,7 @@ import unknownName from './unknown-name.ts';
 import unreadableLine from './unreadable-line.ts';
 import unreadableStructure from './unreadable-structure.ts';
 import unusedCompound from './unused-compound.ts';
+import wrongLayer from './wrong-layer.ts';
 import wrongState from './wrong-state.ts';
 
 export const CHECKS: readonly Check[] = [
@@ -49,6 +54,7 @@ export const CHECKS: readonly Check[] = [
   acidShort,
   amountsDisagree,
   atomWithoutSource,
+  badConfiguration,
   badUnit,
   badUse,
   baseExcess,
@@ -58,7 +64,9 @@ export const CHECKS: readonly Check[] = [
   checkFailed,
   definedTwice,
   gasRelease,
+  heatOfNeutralisation,
   impossibleValence,
+  keepContradicts,
   levelled,
   missingAmount,
   noRule,
@@ -66,6 +74,7 @@ export const CHECKS: readonly Check[] = [
   notAnAcid,
   otherSiteFirst,
   pHOutOfReach,
+  quenchShort,
   reagentEatenByProton,
   runawayPair,
   siteNotFound,
@@ -83,5 +92,6 @@ export const CHECKS: readonly Check[] = [
   unreadableLine,
   unreadableStructure,
   unusedCompound,
+  wrongLayer,
   wrongState,
 ];

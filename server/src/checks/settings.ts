@@ -25,3 +25,13 @@ export const DEFAULT_SETTINGS: Settings = {
   thresholds: { error: 0.95, warning: 0.8, undecided: 0.2 },
   concentration: 0.2,
 };
+
+/** The smallest and the largest value of each number, wherever it is read from. */
+export const LIMITS = {
+  thresholds: {
+    error: { low: 0.5, high: 1 },
+    warning: { low: 0.5, high: 1 },
+    undecided: { low: 0, high: 0.5 },
+  },
+  concentration: { low: 0.001, high: 20 },
+} as const;

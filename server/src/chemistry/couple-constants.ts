@@ -65,11 +65,16 @@ export function coupleConstants(
 ): MoleculeConstants {
   if (perceived.graph === null)
     return { couples: perceived.couples.map(() => null), steps: perceived.components.map(() => []) };
-  const measured = options.estimateOnly ? [] : sources.measured(perceived);
+  const known = options.estimateOnly ? [] : sources.measured(perceived);
+  const measured = known.filter(({ constant }) => constant.origin !== 'house');
+  const house = known.filter(({ constant }) => constant.origin === 'house');
   // The house's values go in first, so that the plan's have the last word.
-  const own = [...(options.own ?? [])]
-    .sort((a, b) => rank(a) - rank(b))
-    .flatMap((value) => ownConstants(perceived, value));
+  const own = [
+    ...house,
+    ...[...(options.own ?? [])]
+      .sort((a, b) => rank(a) - rank(b))
+      .flatMap((value) => ownConstants(perceived, value)),
+  ];
   const water = estimatedSteps(perceived, neutralForm(perceived.graph).graph, tables);
   const steps =
     scale === WATER
@@ -121,12 +126,18 @@ function overridden(
   sources: ConstantSources,
 ): ProtonStep[][] {
   const result = steps.map((list) => [...list]);
-  const counted = countedSteps(perceived, steps, measured);
+  const counted = countedSteps(perceived, steps, [...measured, ...own]);
+  /** Which measured step each place holds. */
+  const settled = perceived.components.map(() => new Map<number, number | null>());
   const put = ({ couple: index, step, constant }: MeasuredConstant) => {
     const couple = perceived.couples[index]!;
     const list = result[couple.component]!;
     const known = step === null ? undefined : counted[couple.component]!.get(step);
-    const place = known?.place ?? nearestPlace(list, couple, constant);
+    const nearest = known?.place ?? nearestPlace(list, couple, constant);
+    // A molecule may have more measured steps than the estimate gives its couple: sulfuric acid has one.
+    const other = settled[couple.component]!.get(nearest);
+    const place = other === undefined || other === step ? nearest : -1;
+    settled[couple.component]!.set(place === -1 ? list.length : place, step);
     if (place === -1) list.push({ couple, constant });
     else
       list[place] = {

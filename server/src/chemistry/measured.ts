@@ -34,9 +34,17 @@ export function measuredConstants(
   });
 }
 
-function constantOf({ name, value, sd, scale, sources, note, temperature }: MeasuredRow): Constant {
+function constantOf({ name, value, sd, scale, sources, note, temperature, house }: MeasuredRow): Constant {
   const at = temperature === null || temperature === 25 ? '' : ` at ${temperature} °C`;
   const remark = note === '' ? '' : `, ${note}`;
-  const what = `measured for ${name} in ${scale}${at}${remark}`;
-  return { value, sd, scale, origin: 'measured', sources, hops: [{ what, value, sd, sources }] };
+  const from = house ? ', from the house file' : '';
+  const what = `measured for ${name} in ${scale}${at}${remark}${from}`;
+  return {
+    value,
+    sd,
+    scale,
+    origin: house ? 'house' : 'measured',
+    sources,
+    hops: [{ what, value, sd, sources }],
+  };
 }

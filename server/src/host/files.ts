@@ -54,11 +54,16 @@ function within(folder: string, place: string): boolean {
   return way !== '' && way !== '..' && !way.startsWith(`..${sep}`) && !isAbsolute(way);
 }
 
-/** The nearest folder at or above a file that holds `.git` or `lyate.json`; the file's own folder where none does. */
-export function workspaceOf(file: string): string {
+/**
+ * The nearest folder at or above a file that holds `.git` or `lyate.json`; the file's own folder where none does.
+ *
+ * @param tops folders above which nothing is looked for, such as those that an editor has open
+ */
+export function workspaceOf(file: string, tops: readonly string[] = []): string {
   const start = dirname(resolve(file));
+  const last = new Set(tops.map((top) => resolve(top)));
   for (let folder = start; ; folder = dirname(folder)) {
-    if (exists(join(folder, '.git')) || exists(join(folder, 'lyate.json'))) return folder;
+    if (last.has(folder) || exists(join(folder, '.git')) || exists(join(folder, 'lyate.json'))) return folder;
     if (folder === dirname(folder)) return start;
   }
 }

@@ -3,11 +3,12 @@
  *
  * Must not know: what a plan means.
  */
-import { readFileSync, statSync } from 'node:fs';
+import { statSync } from 'node:fs';
 import { join, relative, resolve, sep } from 'node:path';
 import ignore, { type Ignore } from 'ignore';
 import { globSync } from 'tinyglobby';
-import { workspaceOf } from './files.ts';
+import { CONFIGURATION_FILE, readConfiguration } from '../answers/configuration.ts';
+import { readText, workspaceOf } from './files.ts';
 
 const PLANS = ['**/*.lyate', '**/*.md', '**/*.markdown'];
 const NEVER = ['**/node_modules/**', '**/.git/**'];
@@ -26,19 +27,20 @@ export function languageOf(file: string): 'lyate' | 'markdown' {
 
 /**
  * Files are taken as they are, folders searched for plans and for Markdown, anything else read as a glob.
- * `.gitignore` and `.lyateignore` between the workspace and a folder hold for what is searched, not for files named.
+ * `.gitignore`, `.lyateignore` and `ignore` of `lyate.json` between the workspace and a folder hold for what is
+ * searched, not for files named.
  */
-export function findPlans(asked: readonly string[], ignored: readonly string[] = []): FoundPlans {
+export function findPlans(asked: readonly string[]): FoundPlans {
   const files = new Set<string>();
   const missing: string[] = [];
   for (const path of asked) {
     const stats = statSync(path, { throwIfNoEntry: false });
     if (stats?.isDirectory()) {
-      for (const file of search(PLANS, path, ignored)) files.add(join(path, file));
+      for (const file of search(PLANS, path)) files.add(join(path, file));
     } else if (stats !== undefined) {
       files.add(path);
     } else {
-      const found = isGlob(path) ? search([path.split(sep).join('/')], '.', ignored) : [];
+      const found = isGlob(path) ? search([path.split(sep).join('/')], '.') : [];
       for (const file of found) files.add(file);
       if (found.length === 0) missing.push(path);
     }
@@ -50,7 +52,7 @@ function isGlob(path: string): boolean {
   return /[*?{[]/.test(path);
 }
 
-function search(patterns: readonly string[], folder: string, ignored: readonly string[]): string[] {
+function search(patterns: readonly string[], folder: string): string[] {
   const found = globSync([...patterns], {
     cwd: folder,
     ignore: NEVER,
@@ -60,23 +62,17 @@ function search(patterns: readonly string[], folder: string, ignored: readonly s
   });
   const root = workspaceOf(join(resolve(folder), 'any'));
   const rules = new Map<string, Ignore>();
-  return found.filter((file) => !isIgnored(root, resolve(folder, file), ignored, rules)).sort();
+  return found.filter((file) => !isIgnored(root, resolve(folder, file), rules)).sort();
 }
 
 /** Whether an ignore file at or above a file, up to the workspace, names it. */
-function isIgnored(
-  root: string,
-  file: string,
-  ignored: readonly string[],
-  rules: Map<string, Ignore>,
-): boolean {
+function isIgnored(root: string, file: string, rules: Map<string, Ignore>): boolean {
   const parts = relative(root, file).split(sep);
   for (let depth = 0; depth < parts.length; depth++) {
     const folder = join(root, ...parts.slice(0, depth));
     let rule = rules.get(folder);
     if (rule === undefined) {
-      rule = ignore().add(rulesOf(folder));
-      if (depth === 0) rule.add([...ignored]);
+      rule = rulesOf(folder);
       rules.set(folder, rule);
     }
     if (rule.ignores(parts.slice(depth).join('/'))) return true;
@@ -84,14 +80,14 @@ function isIgnored(
   return false;
 }
 
-function rulesOf(folder: string): string {
-  return ['.gitignore', '.lyateignore']
-    .map((name) => {
-      try {
-        return readFileSync(join(folder, name), 'utf8');
-      } catch {
-        return '';
-      }
-    })
-    .join('\n');
+function rulesOf(folder: string): Ignore {
+  const rules = ignore();
+  for (const name of ['.gitignore', '.lyateignore']) rules.add(textOf(join(folder, name)));
+  const configuration = textOf(join(folder, CONFIGURATION_FILE));
+  if (configuration !== '') rules.add([...readConfiguration(configuration).configuration.ignore]);
+  return rules;
+}
+
+function textOf(file: string): string {
+  return readText(file).text ?? '';
 }

@@ -11,14 +11,14 @@ import { inside, readText, workspaceOf } from './files.ts';
 /** How often the analysis may ask for more files; a chain of `use` longer than this is left as it is. */
 const ROUNDS = 64;
 
-/**
- * Analyses one text as if it stood at `file`.
- *
- * The files that `use` names are looked up below the workspace of `file`, by their paths relative to it.
- */
+/** Analyses one text as if it stood at `file`, with the files that `use` names looked up below the workspace of `file`. */
 export function analyseWithFiles(analyser: Analyser, source: SourceText): Analysed {
+  return analyseIn(workspaceOf(source.file), analyser, source);
+}
+
+/** The same below a given workspace; paths of `use` are relative to it. */
+export function analyseIn(workspace: string, analyser: Analyser, source: SourceText): Analysed {
   const files = new Map<string, string | null>();
-  const workspace = workspaceOf(source.file);
   const place = relative(workspace, resolve(source.file)).split('\\').join('/');
   let analysed = analyseNow(analyser, { ...source, file: place }, files);
   for (let round = 0; round < ROUNDS && analysed.plan.needs.length !== 0; round++) {

@@ -248,7 +248,7 @@ function inOrder(a: TextProblem, b: TextProblem): number {
 }
 
 /** A short stand-in for a long key: two independent 53-bit hashes, so that equal stands for equal in practice. */
-function digest(text: string): string {
+export function digest(text: string): string {
   const mix = (seed: number) => {
     let high = 0xdeadbeef ^ seed;
     let low = 0x41c6ce57 ^ seed;

@@ -334,6 +334,8 @@ export interface MeasuredRow extends Sourced {
   readonly temperature: number | null;
   readonly checkedAgainst: string;
   readonly note: string;
+  /** From a file of the user's own, which outranks the tables. */
+  readonly house?: true;
 }
 
 /** How constants of one family go from one scale to another: value = intercept + slope × value. */
