@@ -129,6 +129,8 @@ function overridden(
   const counted = countedSteps(perceived, steps, [...measured, ...own]);
   /** Which measured step each place holds. */
   const settled = perceived.components.map(() => new Map<number, number | null>());
+  /** Which measured step each place holds. */
+  const settled = perceived.components.map(() => new Map<number, number | null>());
   const put = ({ couple: index, step, constant }: MeasuredConstant) => {
     const couple = perceived.couples[index]!;
     const list = result[couple.component]!;
