@@ -4,7 +4,7 @@
  * Knows: suggestions.  Must not know: files, colours.
  * Units: °C, equivalents, units of pKa.
  */
-import type { Reason } from '../flask/suggest.ts';
+import { marginOf, type Reason } from '../flask/suggest.ts';
 import { oneDecimal, percent } from './figures.ts';
 import type { Refusal, Suggestion, Suggestions } from './suggest.ts';
 
@@ -58,9 +58,9 @@ function asWritten({ asWritten: { acting, solvents, verdict }, direction }: Sugg
   const what =
     acting.length === 0 ? `no ${direction === 'deprotonate' ? 'base' : 'acid'}` : acting.join(' + ');
   const where = solvents.length === 0 ? '' : ` in ${solvents.join('/')}`;
-  const { answer, margin, extent } = verdict;
+  const { answer, extent } = verdict;
   const word = { yes: 'goes', undecided: 'undecided', no: 'does not go' }[answer];
-  return `as written: ${what}${where} ${word}, ${percent(extent)} reacts, margin ${units(margin)}`;
+  return `as written: ${what}${where} ${word}, ${percent(extent)} reacts, margin ${units(marginOf(verdict))}`;
 }
 
 function table(list: readonly Suggestion[], direction: 'deprotonate' | 'protonate'): string[] {
@@ -85,7 +85,7 @@ function table(list: readonly Suggestion[], direction: 'deprotonate' | 'protonat
       solvent?.name ?? 'as written',
       String(Math.round(temperature - ZERO_CELSIUS)).replace('-', '−'),
       percent(verdict.extent),
-      `${units(verdict.margin)}${verdict.answer === 'undecided' ? ' ?' : ''}`,
+      `${units(marginOf(verdict))}${verdict.answer === 'undecided' ? ' ?' : ''}`,
       next === null ? '–' : units(next.difference),
       usual,
       alsoIn.join(', '),
@@ -109,6 +109,9 @@ function remarks({ option, cautions }: Suggestion): string[] {
         ]),
     ...(verdict.allowances.includes('steady-amount')
       ? ['only a small steady amount forms, which the conversion uses up']
+      : []),
+    ...(verdict.net !== null
+      ? ['goes by the net reaction: the product gives its proton in the end and asks for a full equivalent']
       : []),
     ...(verdict.borrowed ? ['hangs on a scale that the solvent borrows'] : []),
     ...(limit === null

@@ -290,14 +290,22 @@ class ScreeningRun {
     const isWrittenReagent = contents.ingredients.some(
       ({ id, reagent: own }) => this.want.acting.includes(id) && own?.name === reagent.name,
     );
-    const cost =
-      USUAL_COST[row.usual] +
-      place.cost +
-      (isWrittenReagent ? 0 : COST.newReagent) +
-      (temperature === contents.temperature ? 0 : COST.otherTemperature) +
-      (isShort(limit) ? COST.limit : 0) +
-      (ahead.length === 0 ? 0 : COST.ahead) +
-      costOf(verdict, next, this.loses);
+    const isAsWritten =
+      isWrittenReagent &&
+      place.ingredients.every(({ id }) => this.want.solvents.includes(id)) &&
+      temperature === contents.temperature &&
+      equiv === asked;
+    // What is written and works needs no other to take its place.
+    const keeps = isAsWritten && verdict.answer === 'yes' && !isShort(limit);
+    const cost = keeps
+      ? 0
+      : USUAL_COST[row.usual] +
+        place.cost +
+        (isWrittenReagent ? 0 : COST.newReagent) +
+        (temperature === contents.temperature ? 0 : COST.otherTemperature) +
+        (isShort(limit) ? COST.limit : 0) +
+        (ahead.length === 0 ? 0 : COST.ahead) +
+        costOf(verdict, next, this.loses);
     return {
       reagent,
       solvent,
@@ -345,13 +353,16 @@ function isShort(limit: LimitRow | null): boolean {
   return limit?.halfLifeHours != null && limit.halfLifeHours < WORKING_DAY;
 }
 
-function costOf(
-  { answer, allowances, margin, probability, partner }: Verdict,
-  next: OtherSite | null,
-  loses: boolean,
-): number {
+/** Units to spare; where the product gives its proton instead, those of the net reaction. */
+export function marginOf({ margin, net }: Verdict): number {
+  return net === null ? margin : net.logK;
+}
+
+function costOf(verdict: Verdict, next: OtherSite | null, loses: boolean): number {
+  const { answer, allowances, probability, partner, net } = verdict;
+  const margin = marginOf(verdict);
   const { slimMargin, idleMargin, nextSite } = COST;
-  let cost = 2 * probability;
+  let cost = net === null ? 2 * probability : 0;
   if (answer === 'undecided') cost += COST.undecided;
   if (allowances.includes('steady-amount')) cost += COST.steady;
   cost += slimMargin.unit * Math.max(0, Math.min(slimMargin.below - margin, 6));
