@@ -68,7 +68,10 @@ if (process.argv[2] !== 'tables') {
       entryPoints: ['server/src/cli/main.ts'],
       outfile: 'dist/lyate.cjs',
       banner: { js: `#!/usr/bin/env node\n${ownAddress}` },
+      // It starts its threads from files of its own.
+      external: ['tinypool'],
     }),
+    bundle({ ...node, entryPoints: ['server/src/cli/records-worker.ts'], outfile: 'dist/records-worker.cjs' }),
     bundle({ ...node, entryPoints: ['server/src/lsp/node.ts'], outfile: 'dist/server.cjs' }),
     bundle({
       ...browser,

@@ -35,7 +35,12 @@ export function sarifReport(
         artifacts: files.map(({ file }) => ({ location: { uri: uriOf(file) }, roles: ['analysisTarget'] })),
         results: files.flatMap((file) => {
           const lines = file.text.split(/\r\n|\n|\r/);
-          return file.findings.map((finding) => result(file.file, lines, finding, places));
+          const told = (finding: Finding) => result(file.file, lines, finding, places);
+          if (file.known === undefined) return file.findings.map(told);
+          return [
+            ...file.findings.map((finding) => ({ ...told(finding), baselineState: 'new' })),
+            ...file.known.map((finding) => ({ ...told(finding), baselineState: 'unchanged' })),
+          ];
         }),
       },
     ],

@@ -13,6 +13,8 @@ export interface FileFindings {
   readonly file: string;
   readonly text: string;
   readonly findings: readonly Finding[];
+  /** Those that a baseline knows; absent where none was asked. */
+  readonly known?: readonly Finding[];
 }
 
 /** Whether one severity is at least as bad as another. */
