@@ -3,6 +3,7 @@ import { expect, test } from 'vitest';
 import { analyseNow, createAnalyser } from '../../server/src/answers/analyse.ts';
 import type { Edit } from '../../server/src/answers/fixes.ts';
 import { suggestionsAt, suggestionsOf } from '../../server/src/answers/suggest.ts';
+import { suggestedFixes } from '../../server/src/answers/suggest-fixes.ts';
 import { pairsRecord, suggestionsRecord } from '../../server/src/answers/suggest-record.ts';
 import { suggestionsText } from '../../server/src/answers/suggest-text.ts';
 import { tables } from '../support/tables.ts';
@@ -122,4 +123,25 @@ test('the record is plain data and names every pair once', () => {
   const pairs = pairsRecord(one!);
   const seen = pairs.flatMap(({ reagent, solvents }) => solvents.map((solvent) => `${reagent} ${solvent}`));
   expect(new Set(seen).size).toBe(seen.length);
+});
+
+test('findings about direction and solvent get the best few as fixes, none of them safe', () => {
+  const analysed = analyse(KETONE);
+  const [finding] = analysed.findings.filter(({ check }) => check === 'transfer-uphill');
+  const fixes = suggestedFixes(analysed, finding!);
+  expect(fixes).toHaveLength(3);
+  for (const { edits, safe, title } of fixes) {
+    expect(safe).toBe(false);
+    expect(title).toMatch(/^Take .+ in .+, 1\.1 equiv$/);
+    expect(errorsOf(edited(KETONE, edits)), title).toEqual([]);
+  }
+  expect(suggestedFixes(analysed, { ...finding!, check: 'unused-compound' })).toEqual([]);
+});
+
+test('asking again gives the same list, and lines above only move it', () => {
+  const [before] = suggestionsOf(analyse(KETONE), 'A')!;
+  const [after] = suggestionsOf(analyse(`// a remark\n\n${KETONE}`), 'A')!;
+  expect(after!.line).toBe(before!.line + 2);
+  expect(after!.list.map(({ title }) => title)).toEqual(before!.list.map(({ title }) => title));
+  expect(after!.list[0]!.edits[0]!.range.start.line).toBe(before!.list[0]!.edits[0]!.range.start.line + 2);
 });

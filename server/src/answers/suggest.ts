@@ -105,6 +105,14 @@ export function suggestionsOf(
   return index === -1 ? null : suggestionsAt(analysed, analysed.plan.steps[index]!.firstLine, breadth);
 }
 
+/** What was worked out for a transfer, without the place of its step. */
+interface Worked extends Omit<Suggestions, 'line' | 'list'> {
+  readonly list: readonly Tried[];
+}
+
+/** Remembered as long as the step is: working a transfer out takes long, and the cursor asks for it again and again. */
+const remembered = new WeakMap<TransferFact, Map<Breadth, Worked | null>>();
+
 function suggestionsFor(
   analysed: Analysed,
   step: AnalysedStep,
@@ -112,6 +120,27 @@ function suggestionsFor(
   fact: TransferFact,
   breadth: Breadth,
 ): Suggestions | null {
+  const known = remembered.get(fact) ?? new Map<Breadth, Worked | null>();
+  remembered.set(fact, known);
+  let worked = known.get(breadth);
+  if (worked === undefined) {
+    worked = workOut(analysed, step, fact, breadth);
+    known.set(breadth, worked);
+  }
+  if (worked === null) return null;
+  return {
+    ...worked,
+    line: firstLine + fact.statement.range.start.line,
+    list: worked.list.map(({ swap, ...one }) => ({ ...one, edits: editsFor(analysed, firstLine, swap) })),
+  };
+}
+
+function workOut(
+  analysed: Analysed,
+  step: AnalysedStep,
+  fact: TransferFact,
+  breadth: Breadth,
+): Worked | null {
   const { facts } = step;
   const { statement, contents, ingredient, convert } = fact;
   const verdict = hardest(fact.verdicts, statement.keyword);
@@ -157,7 +186,6 @@ function suggestionsFor(
   }
   return {
     step: facts.step.label,
-    line: firstLine + statement.range.start.line,
     direction: statement.keyword,
     compound: statement.substance.name,
     site: verdict.site,
@@ -166,7 +194,7 @@ function suggestionsFor(
       solvents: solvents.map(({ name }) => name),
       verdict,
     },
-    list: list.map(({ swap, ...one }) => ({ ...one, edits: editsFor(analysed, firstLine, swap) })),
+    list,
     refusals: [...[...misses.values()].sort(byShortfall), ...solventsOut],
     pairs: screening.rejections,
     namesOf: new Map(contents.ingredients.map(({ id, name }) => [id, name])),
