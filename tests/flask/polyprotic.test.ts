@@ -19,5 +19,6 @@ test.each([
     .map(({ constant }) => constant.value);
   expect(values).toHaveLength(expected.length);
   // Values: D. D. Perrin, Ionisation Constants of Inorganic Acids and Bases in Aqueous Solution (1982), from memory.
-  for (const [place, value] of expected.entries()) expect(Math.abs(values[place]! - value)).toBeLessThan(0.06);
+  for (const [place, value] of expected.entries())
+    expect(Math.abs(values[place]! - value)).toBeLessThan(0.06);
 });
