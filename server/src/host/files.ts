@@ -9,7 +9,7 @@
 import { readFileSync, realpathSync, renameSync, rmSync, statSync, writeFileSync } from 'node:fs';
 import { dirname, isAbsolute, join, relative, resolve, sep } from 'node:path';
 
-export const LARGEST_FILE = 128 * 1024 * 1024;
+export const LARGEST_FILE = 64 * 1024 * 1024;
 
 export type Reading =
   | { readonly text: string; readonly problem?: undefined }
