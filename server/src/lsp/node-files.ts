@@ -24,7 +24,9 @@ export function nodeFiles(client: ClientFiles): Files {
       return found.map((file) => pathOf(root, pathToFileURL(file).toString()));
     },
     rootOf(uri, folders) {
-      return isFile(uri) ? pathToFileURL(workspaceOf(fileURLToPath(uri))).toString() : folderOf(uri, folders);
+      if (!isFile(uri)) return folderOf(uri, folders);
+      const opened = folders.filter(isFile).map((folder) => fileURLToPath(folder));
+      return pathToFileURL(workspaceOf(fileURLToPath(uri), opened)).toString();
     },
   };
 }

@@ -9,7 +9,9 @@
  */
 import type { TextDocument } from 'vscode-languageserver-textdocument';
 import type { Analyser } from '../answers/analyse.ts';
+import { CONFIGURATION_FILE } from '../answers/configuration.ts';
 import type { Analysed } from '../answers/types.ts';
+import { type Configurations, settingsIn } from './configurations.ts';
 import type { Door, Files } from './door.ts';
 import { normal, pathOf, uriOf } from './places.ts';
 import type { EditorSettings } from './settings.ts';
@@ -34,6 +36,7 @@ export interface PlansOptions {
   readonly folders: () => readonly string[];
   readonly document: (uri: string) => TextDocument | undefined;
   readonly settingsOf: (uri: string) => Promise<EditorSettings>;
+  readonly configurations: Configurations;
   readonly onResult: (result: Result) => void;
   readonly onFailure: (uri: string, error: unknown) => void;
 }
@@ -78,7 +81,7 @@ export function languageOf(document: TextDocument): Language | null {
 }
 
 export function createPlans(options: PlansOptions): Plans {
-  const { door, files, folders, document, settingsOf, onResult, onFailure } = options;
+  const { door, files, folders, document, settingsOf, configurations, onResult, onFailure } = options;
   const open = new Map<string, OpenPlan>();
   const onDisk = new Map<string, string | null>();
 
@@ -126,6 +129,15 @@ export function createPlans(options: PlansOptions): Plans {
     }
   };
 
+  const analyserFor = async (root: string, uri: string, settings: EditorSettings) => {
+    const configured = await configurations.of(root);
+    const checks = settingsIn(configured, root, uri, settings.checks);
+    return {
+      key: JSON.stringify([configured.tables.version, checks]),
+      create: () => door.createAnalyser(configured.tables, checks),
+    };
+  };
+
   const run = async (plan: OpenPlan, ticket: number, cause: Cause): Promise<Result | null> => {
     const isStale = () => plan.ticket !== ticket;
     const newest = () => (open.get(plan.uri) === plan ? plan.running : null);
@@ -139,10 +151,9 @@ export function createPlans(options: PlansOptions): Plans {
       if (text === undefined || language === null) return null;
       const { version } = text;
       const source = { file: pathOf(plan.root, plan.uri), text: text.getText(), language };
-      const key = JSON.stringify(settings.checks);
-      if (plan.analyser?.key !== key) {
-        plan.analyser = { key, analyser: door.createAnalyser(door.tables(), settings.checks) };
-      }
+      const { key, create } = await analyserFor(plan.root, plan.uri, settings);
+      if (isStale()) return newest();
+      if (plan.analyser?.key !== key) plan.analyser = { key, analyser: create() };
       const done = await analyse(plan.analyser.analyser, source, plan.root, isStale);
       if (done === null || isStale()) return newest();
       plan.uses = done.uses;
@@ -165,6 +176,15 @@ export function createPlans(options: PlansOptions): Plans {
   const refreshUsersOf = (uri: string) => {
     const file = normal(uri);
     for (const plan of open.values()) if (plan.uses.has(file)) refresh(plan, 'surroundings');
+  };
+
+  const refreshAll = () => {
+    onDisk.clear();
+    configurations.clear();
+    for (const plan of open.values()) {
+      plan.root = files.rootOf(plan.uri, folders());
+      refresh(plan, 'surroundings');
+    }
   };
 
   return {
@@ -197,15 +217,13 @@ export function createPlans(options: PlansOptions): Plans {
     },
     changedOnDisk(uri) {
       onDisk.delete(normal(uri));
+      if (configurations.changedOnDisk(normal(uri)) || uri.endsWith(`/${CONFIGURATION_FILE}`)) {
+        refreshAll();
+        return;
+      }
       refreshUsersOf(uri);
     },
-    refreshAll() {
-      onDisk.clear();
-      for (const plan of open.values()) {
-        plan.root = files.rootOf(plan.uri, folders());
-        refresh(plan, 'surroundings');
-      }
-    },
+    refreshAll,
     async current(uri) {
       return (await open.get(uri)?.running) ?? null;
     },
@@ -215,7 +233,7 @@ export function createPlans(options: PlansOptions): Plans {
       if (text === null) return null;
       const settings = await settingsOf(uri);
       const language = /\.(md|markdown)$/i.test(path) ? 'markdown' : 'lyate';
-      const analyser = door.createAnalyser(door.tables(), settings.checks);
+      const analyser = (await analyserFor(root, uri, settings)).create();
       const done = await analyse(analyser, { file: path, text, language }, root, () => false);
       return done && { uri, version: 0, root, analysed: done.analysed, settings, cause: 'surroundings' };
     },

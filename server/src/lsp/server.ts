@@ -13,6 +13,7 @@ import {
   TextDocuments,
 } from 'vscode-languageserver';
 import { TextDocument } from 'vscode-languageserver-textdocument';
+import { createConfigurations } from './configurations.ts';
 import type { ClientFiles, Door } from './door.ts';
 import { createPlans, type Result } from './plans.ts';
 import { CHECK_ALL, createCheckAll } from './requests/check-all.ts';
@@ -38,7 +39,7 @@ import {
 import { registerSymbols } from './requests/symbols.ts';
 import type { Session } from './session.ts';
 import { type EditorSettings, readSettings } from './settings.ts';
-import { PAGE_SCHEME } from './to-protocol.ts';
+import { PAGE_SCHEME, toDiagnostic } from './to-protocol.ts';
 
 /** What a client without a configuration of its own may send with its first question. */
 interface FirstOptions {
@@ -147,9 +148,19 @@ function start(
 
   const files = door.files(clientFiles(connection, options));
   const shown: { show: (result: Result) => void } = { show: () => {} };
+  const configurations = createConfigurations({
+    door,
+    files,
+    show: (uri, file) => {
+      const context = { uri, uriOf: () => uri, pages: false };
+      const diagnostics = (file?.findings ?? []).map((finding) => toDiagnostic(finding, context));
+      void connection.sendDiagnostics({ uri, diagnostics });
+    },
+  });
   const plans = createPlans({
     door,
     files,
+    configurations,
     folders: () => folders,
     document: (uri) => documents.get(uri),
     settingsOf,
@@ -191,7 +202,7 @@ function start(
     }
     if (capabilities.workspace?.didChangeWatchedFiles?.dynamicRegistration) {
       void connection.client.register(DidChangeWatchedFilesNotification.type, {
-        watchers: [{ globPattern: '**/*.{lyate,md,markdown}' }],
+        watchers: [{ globPattern: '**/{*.lyate,*.md,*.markdown,*.csv,lyate.json}' }],
       });
     }
     if (capabilities.workspace?.workspaceFolders) {
