@@ -11,7 +11,7 @@ import type { Refusal, Suggestion, Suggestions } from './suggest.ts';
 const ZERO_CELSIUS = 273.15;
 const MOST_NAMED = 8;
 const REASONS: readonly (readonly [Refusal['reason']['kind'], string])[] = [
-  ['too-weak', 'too weak (units short at best)'],
+  ['too-weak', 'too weak (units short, in the solvent that suits it best)'],
   ['attacks', 'attacks something else'],
   ['lost-to-solvent', 'eaten by the solvent'],
   ['finding', 'raises an error in this step'],
@@ -21,7 +21,7 @@ const REASONS: readonly (readonly [Refusal['reason']['kind'], string])[] = [
   ['not-proposed', 'never proposed'],
   ['no-constant', 'no constant at hand'],
   ['not-used-in', 'not used in any solvent of the tables'],
-  ['not-reached', 'rarer than what was looked at'],
+  ['not-reached', 'rare, and not looked at'],
 ];
 
 export interface TextLimits {

@@ -373,9 +373,9 @@ function nearness({ reason }: Refusal): number {
     'not-proposed',
     'too-weak',
     'no-constant',
+    'not-reached',
     'frozen',
     'boils',
-    'not-reached',
     'not-used-in',
   ];
   const place = order.indexOf(reason.kind);

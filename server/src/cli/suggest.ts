@@ -28,18 +28,19 @@ export function addSuggest(program: Command): void {
     .argument('<plan>')
     .requiredOption('--step <label>', 'label of the step')
     .option('--line <number>', 'only the transfer on this line, counted from 1', lineNumber)
-    .option('--all', 'every suggestion and every reason')
+    .option('--all', 'rare bases, acids and solvents too, every suggestion and every reason')
     .addOption(new Option('--format <format>').choices(['text', 'json']).default('text'))
     .action((file: string, options: SuggestOptions) => {
       const { text, problem } = readText(file);
       if (text === undefined) throw new Error(`${file} ${problem}`);
       const source = { file, text, language: languageOf(file) };
       const analysed = analyseWithFiles(createAnalyser(builtTables()), source);
-      const all = suggestionsOf(analysed, options.step, 'all');
+      const breadth = options.all ? 'all' : 'ordinary';
+      const all = suggestionsOf(analysed, options.step, breadth);
       if (all === null) throw new Error(`${file} has no step ${options.step}`);
       const line = options.line === undefined ? null : options.line - 1;
       const list =
-        line === null ? all : suggestionsAt(analysed, line, 'all').filter((one) => one.line === line);
+        line === null ? all : suggestionsAt(analysed, line, breadth).filter((one) => one.line === line);
       if (list.length === 0) {
         const where = line === null ? `step ${options.step}` : `line ${line + 1}`;
         throw new Error(`${where} has no deprotonate or protonate that can be judged`);

@@ -5,15 +5,28 @@
  * Units: pKa.
  * Invariant: what is called hopeless the judge refuses too.   (tests/flask/suggest.test.ts)
  */
-import type { Perceived } from '../chemistry/couple.ts';
+import type { Constant, Perceived } from '../chemistry/couple.ts';
 import type { ReagentRow } from '../tables/rows.ts';
 import type { Tables } from '../tables/tables.ts';
 import type { Intent } from './judge.ts';
 import type { ConstantsIn, Ingredient } from './state.ts';
 
+export interface Gap {
+  /** log K on the scale asked for. */
+  readonly plain: number;
+  /** The most favourable on any scale that a flask may be worked on, with the benefit of every doubt. */
+  readonly best: number;
+}
+
 export interface Reach {
-  /** The most favourable log K on any scale that a flask may be worked on; null where only the flask can tell. */
-  gapAtBest(reagent: ReagentRow, molecule: Perceived, scale: string): number | null;
+  /** Null where only the flask can tell. */
+  gapOf(reagent: ReagentRow, molecule: Perceived, scale: string): Gap | null;
+}
+
+/** A constant as it stands, and moved by its doubt in favour of the transfer. */
+interface Strength {
+  readonly plain: number;
+  readonly doubted: number;
 }
 
 /** Standard deviations by which each constant gets the benefit of the doubt. */
@@ -29,8 +42,8 @@ export function createReach(
   constantsIn: ConstantsIn,
 ): Reach {
   const loses = direction === 'deprotonate';
-  const known = new Map<string, number | null>();
-  const remember = (key: string, find: () => number | null): number | null => {
+  const known = new Map<string, Strength | null>();
+  const remember = (key: string, find: () => Strength | null): Strength | null => {
     const before = known.get(key);
     if (before !== undefined) return before;
     const found = find();
@@ -38,38 +51,49 @@ export function createReach(
     return found;
   };
   return {
-    gapAtBest(reagent, molecule, scale) {
-      let best: number | null = null;
+    gapOf(reagent, molecule, scale) {
+      const gaps: Gap[] = [];
       for (const one of new Set([scale, ...FALLBACKS])) {
         const ofSite = remember(`\0${one}`, () => siteStrength(one));
         const own = remember(`${reagent.name}\0${one}`, () => reagentStrength(reagent, molecule, one));
         if (ofSite === null || own === null) return null;
-        const gap = loses ? own - ofSite : ofSite - own;
-        best = best === null ? gap : Math.max(best, gap);
+        const between = (side: keyof Strength) =>
+          loses ? own[side] - ofSite[side] : ofSite[side] - own[side];
+        gaps.push({ plain: between('plain'), best: between('doubted') });
       }
-      return best;
+      return { plain: gaps[0]!.plain, best: Math.max(...gaps.map(({ best }) => best)) };
     },
   };
 
-  function siteStrength(scale: string): number | null {
+  function siteStrength(scale: string): Strength | null {
     if (site?.molecule == null) return null;
     const { couples } = constantsIn(site.molecule, scale, tables, site.own ? { own: site.own } : {});
     const places = meant.length === 0 ? couples.map((_, place) => place) : meant;
-    const values = places.map((place) => couples[place] ?? null);
-    if (values.length === 0 || values.includes(null)) return null;
-    const doubted = values.map((one) => one!.value + (loses ? -1 : 1) * SPREAD * one!.sd);
-    return loses ? Math.min(...doubted) : Math.max(...doubted);
+    return strongest(
+      places.map((place) => couples[place] ?? null),
+      loses ? 'lowest' : 'highest',
+    );
   }
 
-  function reagentStrength(reagent: ReagentRow, molecule: Perceived, scale: string): number | null {
+  function reagentStrength(reagent: ReagentRow, molecule: Perceived, scale: string): Strength | null {
     // A surface or a hydride acts by what the trade knows of it, not by its constant.
     if (reagent.surfaceCeiling !== null || reagent.roles.includes('metal-hydride')) return null;
     const { couples } = constantsIn(molecule, scale, tables, {});
-    const values = molecule.couples.flatMap(({ holdsProton }, place) =>
+    const own = molecule.couples.flatMap(({ holdsProton }, place) =>
       holdsProton === loses ? [] : [couples[place] ?? null],
     );
-    if (values.length === 0 || values.includes(null)) return null;
-    const doubted = values.map((one) => one!.value + (loses ? 1 : -1) * SPREAD * one!.sd);
-    return loses ? Math.max(...doubted) : Math.min(...doubted);
+    return strongest(own, loses ? 'highest' : 'lowest');
   }
+}
+
+/** The extreme of some constants; null where one of them is missing, because it might be the one that counts. */
+function strongest(constants: readonly (Constant | null)[], end: 'lowest' | 'highest'): Strength | null {
+  if (constants.length === 0 || constants.includes(null)) return null;
+  const sign = end === 'highest' ? 1 : -1;
+  const most = (values: readonly number[]) => sign * Math.max(...values.map((value) => sign * value));
+  const known = constants as readonly Constant[];
+  return {
+    plain: most(known.map(({ value }) => value)),
+    doubted: most(known.map(({ value, sd }) => value + sign * SPREAD * sd)),
+  };
 }

@@ -92,7 +92,7 @@ export interface Screening {
 
 const ZERO_CELSIUS = 273.15;
 /** Flasks solved for one question; keeps the answer under a second. */
-const MOST_JUDGED = 500;
+const MOST_JUDGED = { ordinary: 500, all: 1000 } as const;
 /** Options from which the rare pairs are left out where only the ordinary ones are asked for. */
 const ENOUGH = 12;
 const FOR_GOOD = new Set<string>(['metal-hydride', 'metal-amide', 'organometallic', 'aluminium-hydride']);
@@ -220,7 +220,7 @@ class ScreeningRun {
   }
 
   private isBeyond({ prior }: Pair): boolean {
-    if (MOST_JUDGED <= this.judged) return true;
+    if (MOST_JUDGED[this.want.breadth] <= this.judged) return true;
     return this.want.breadth === 'ordinary' && USUAL_COST.rare <= prior && ENOUGH <= this.options.length;
   }
 
@@ -228,9 +228,9 @@ class ScreeningRun {
     const { choice, place } = pair;
     const { reagent } = choice;
     const { scale } = place.ingredients[0]!.solvent!;
-    const gap = this.reach.gapAtBest(reagent, perceive(reagent.smiles!, this.tables), scale);
-    if (gap !== null && gap < -(this.want.intent.isConsumed ? STEADY : 0))
-      return { kind: 'too-weak', short: -gap };
+    const gap = this.reach.gapOf(reagent, perceive(reagent.smiles!, this.tables), scale);
+    if (gap !== null && gap.best < -(this.want.intent.isConsumed ? STEADY : 0))
+      return { kind: 'too-weak', short: -gap.plain };
     this.judged++;
     return this.weigh(pair);
   }
