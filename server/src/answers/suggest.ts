@@ -9,24 +9,17 @@
  *  2. No more than `MOST_TRIED` steps are worked for one transfer.            (same)
  */
 
-import type { Report } from '../checks/define.ts';
 import type { StepFacts, TransferFact } from '../checks/facts.ts';
-import { gatherFacts } from '../checks/gather.ts';
-import { CHECKS } from '../checks/registry.generated.ts';
 import { perceive } from '../chemistry/perceive.ts';
 import type { Ingredient, Site, Verdict } from '../flask/state.ts';
 import { type Option, type Reason, type Rejection, screen } from '../flask/suggest.ts';
+import type { Step } from '../route/plan.ts';
 import type { ReagentRow, SolventRow } from '../tables/rows.ts';
 import type { Edit } from './fixes.ts';
 import { stepAt } from './steps.ts';
-import { editsFor, type Swap, stepWith } from './suggest-edits.ts';
+import { editsFor, type Swap } from './suggest-edits.ts';
+import { createTrial, type Remark, type Trial } from './suggest-trial.ts';
 import type { Analysed, AnalysedStep } from './types.ts';
-
-/** What a check would say of the step with a suggestion in it. */
-export interface Remark {
-  readonly check: string;
-  readonly message: string;
-}
 
 export interface Suggestion {
   readonly option: Option;
@@ -72,6 +65,9 @@ export interface Suggestions {
 export type Breadth = 'ordinary' | 'all';
 
 const MOST_TRIED = 20;
+const LEAST_TRIED = 1;
+/** Statements of a step up to which that many are tried. */
+const USUAL_LENGTH = 20;
 /** Solvents of one reagent that are tried before it is refused. */
 const TRIES = 3;
 const USUAL_EQUIV = 1.1;
@@ -171,8 +167,10 @@ function workOut(
     facts.tables,
     facts.settings.thresholds,
   );
-  const trial = createTrial(analysed, step, fact, acting, loses);
-  const { list, refused } = tryOut(screening.options, trial);
+  const { label } = facts.step.continues ?? {};
+  const before = analysed.steps.find((one) => one.facts.step.label === label)?.facts ?? null;
+  const trial = createTrial(facts, before, fact, acting, loses);
+  const { list, refused } = tryOut(screening.options, trial, mostTried(facts.step));
   const misses = new Map<ReagentRow, Refusal>(refused.map((one) => [one.reagent!, one]));
   const offered = new Set(list.map(({ option }) => option.reagent));
   const solventsOut: Refusal[] = [];
@@ -248,14 +246,12 @@ interface Tried extends Omit<Suggestion, 'edits'> {
   readonly cost: number;
 }
 
-type Trial = (option: Option) => {
-  readonly swap: Swap;
-  readonly errors: Remark[];
-  readonly cautions: Remark[];
-};
-
 /** The best solvent of each reagent that stands the checks; what falls with all that are tried is refused. */
-function tryOut(options: readonly Option[], trial: Trial): { list: Tried[]; refused: Refusal[] } {
+function tryOut(
+  options: readonly Option[],
+  trial: Trial,
+  most: number,
+): { list: Tried[]; refused: Refusal[] } {
   const byReagent = new Map<ReagentRow, Option[]>();
   for (const option of options) {
     const list = byReagent.get(option.reagent);
@@ -268,7 +264,7 @@ function tryOut(options: readonly Option[], trial: Trial): { list: Tried[]; refu
   for (const [reagent, own] of byReagent) {
     let failure: Remark | null = null;
     for (const option of own.slice(0, TRIES)) {
-      if (MOST_TRIED <= tried) break;
+      if (most <= tried) break;
       tried++;
       const { swap, errors, cautions } = trial(option);
       if (errors[0] !== undefined) {
@@ -293,74 +289,10 @@ function tryOut(options: readonly Option[], trial: Trial): { list: Tried[]; refu
   return { list: list.sort((a, b) => a.cost - b.cost), refused };
 }
 
-/** Works the step with an option in it and says which errors and warnings are new. */
-function createTrial(
-  { steps }: Analysed,
-  { facts }: AnalysedStep,
-  fact: TransferFact,
-  acting: readonly Ingredient[],
-  loses: boolean,
-): Trial {
-  const { step, tables, settings } = facts;
-  const statements = facts.additions.flatMap(({ ingredient, statement }) =>
-    statement !== null && acting.some(({ id }) => id === ingredient.id) ? [statement] : [],
-  );
-  const before = steps.find((one) => one.facts.step.label === step.continues?.label)?.facts ?? null;
-  const amount = fact.ingredient?.mol ?? 0;
-  const perReference = amount === 0 ? 1 : amount / step.referenceMol;
-  const known = countByCheck(reportsOf(facts));
-  return (option) => {
-    const swap: Swap = {
-      option,
-      transfer: fact.statement,
-      temperature: fact.contents.temperature,
-      acting: statements,
-      loses,
-      perReference,
-      step,
-    };
-    const after = gatherFacts(stepWith(swap), before, tables, settings);
-    const left = new Map(known);
-    const errors: Remark[] = [];
-    const cautions: Remark[] = [];
-    for (const { check, severity, message } of reportsOf(after)) {
-      const key = `${check} ${severity}`;
-      const count = left.get(key) ?? 0;
-      if (0 < count) left.set(key, count - 1);
-      else (severity === 'error' ? errors : cautions).push({ check, message });
-    }
-    return { swap, errors, cautions };
-  };
-}
-
-interface Said {
-  readonly check: string;
-  readonly severity: 'error' | 'warning';
-  readonly message: string;
-}
-
-/** The errors and warnings of all checks on a step. */
-function reportsOf(facts: StepFacts): Said[] {
-  return CHECKS.flatMap((check) => {
-    const set = facts.settings.severities[check.name];
-    if (check.inStep === undefined || set === 'off' || (check.quiet && set === undefined)) return [];
-    const severityOf = ({ severity }: Report) => set ?? severity ?? check.severity;
-    return [...check.inStep(facts)].flatMap((report): Said[] => {
-      const severity = severityOf(report);
-      return severity === 'error' || severity === 'warning'
-        ? [{ check: check.name, severity, message: report.message }]
-        : [];
-    });
-  });
-}
-
-function countByCheck(said: readonly Said[]): Map<string, number> {
-  const counts = new Map<string, number>();
-  for (const { check, severity } of said) {
-    const key = `${check} ${severity}`;
-    counts.set(key, (counts.get(key) ?? 0) + 1);
-  }
-  return counts;
+/** Long steps take long to work. */
+function mostTried({ statements }: Step): number {
+  const size = Math.max(1, statements.length / USUAL_LENGTH);
+  return Math.max(LEAST_TRIED, Math.floor(MOST_TRIED / size ** 1.5));
 }
 
 /** Which of several refusals of one reagent says most: lower is nearer to having been a suggestion. */

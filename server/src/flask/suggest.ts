@@ -6,7 +6,7 @@
  * Invariants:
  *  1. An option's verdict is that of `judgeTransfer` on the flask with the option in it.   (tests/flask/suggest.test.ts)
  *  2. Every pair ends as an option or as a rejection with its reason.                     (same)
- *  3. The same question gives the same list; no more than `MOST_JUDGED` flasks are solved. (same)
+ *  3. The same question gives the same list; a bounded number of flasks are solved. (same)
  * A candidate solvent stands alone: what a stock solution of the base brings along is left out.
  */
 import { constantsIn as constantsOf } from '../chemistry/constants.ts';
@@ -91,8 +91,11 @@ export interface Screening {
 }
 
 const ZERO_CELSIUS = 273.15;
-/** Flasks solved for one question; keeps the answer under a second. */
+/** Flasks solved for one question, fewer where each holds much; keeps the answer under a second or so. */
 const MOST_JUDGED = { ordinary: 500, all: 1000 } as const;
+const LEAST_JUDGED = 12;
+/** Ingredients of a flask up to which all of these are solved. */
+const USUAL_SIZE = 8;
 /** Options from which the rare pairs are left out where only the ordinary ones are asked for. */
 const ENOUGH = 12;
 const FOR_GOOD = new Set<string>(['metal-hydride', 'metal-amide', 'organometallic', 'aluminium-hydride']);
@@ -141,6 +144,7 @@ class ScreeningRun {
   private readonly options: Option[] = [];
   private readonly rejections: Rejection[] = [];
   private judged = 0;
+  private readonly mostJudged: number;
   private readonly loses: boolean;
   private readonly rest: readonly Ingredient[];
   private readonly site: Ingredient | undefined;
@@ -163,6 +167,9 @@ class ScreeningRun {
     this.constantsIn = constantsIn;
     const { contents, intent, acting, solvents } = want;
     this.loses = intent.direction === 'deprotonate';
+    // The work on a flask grows faster than what it holds.
+    const size = Math.max(1, contents.ingredients.length / USUAL_SIZE);
+    this.mostJudged = Math.max(LEAST_JUDGED, MOST_JUDGED[want.breadth] / size ** 1.5);
     this.rest = contents.ingredients.filter(({ id }) => !acting.includes(id) && !solvents.includes(id));
     this.site = contents.ingredients.find(({ id }) => id === intent.ingredient);
     this.reach = createReach(intent, this.site, tables, constantsIn);
@@ -220,7 +227,7 @@ class ScreeningRun {
   }
 
   private isBeyond({ prior }: Pair): boolean {
-    if (MOST_JUDGED[this.want.breadth] <= this.judged) return true;
+    if (this.mostJudged <= this.judged) return true;
     return this.want.breadth === 'ordinary' && USUAL_COST.rare <= prior && ENOUGH <= this.options.length;
   }
 
