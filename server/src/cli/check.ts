@@ -9,7 +9,7 @@ import type { Severity } from '../checks/finding.ts';
 import { CHECKS } from '../checks/registry.generated.ts';
 import { createPlanDesk, type PlanDesk, pathFromHere } from '../host/configured.ts';
 import { readText, writeWhole } from '../host/files.ts';
-import { findPlans, languageOf } from '../host/paths.ts';
+import { languageOf } from '../host/paths.ts';
 import { githubReport, gitlabReport } from '../report/annotations.ts';
 import { baselineOf, type Compared, compareWith, readBaseline } from '../report/baseline.ts';
 import { jsonReport } from '../report/json.ts';
@@ -19,6 +19,7 @@ import { sarifReport } from '../report/sarif.ts';
 import { atLeast, type FileFindings } from '../report/summary.ts';
 import { type Paint, textReport, UNPAINTED } from '../report/text.ts';
 import { progressOf } from './progress.ts';
+import { readAll, type Source } from './read-plans.ts';
 import { checkRecords } from './records.ts';
 import { readStandardInput } from './streams.ts';
 
@@ -37,11 +38,6 @@ interface CheckOptions {
   readonly writeBaseline?: true;
   readonly workspace?: string;
   readonly printConfig?: string;
-}
-
-interface Source {
-  readonly file: string;
-  readonly text: string;
 }
 
 /** Adds the command. */
@@ -134,24 +130,6 @@ function isWanted(
   options: CheckOptions,
 ): boolean {
   return options.minConfidence <= confidence && (!options.quiet || atLeast(severity, 'warning'));
-}
-
-/** The text of every plan that can be read; says what cannot on standard error. */
-function readAll(paths: readonly string[]): { sources: Source[]; failed: boolean } {
-  const { files, missing } = findPlans(paths.length === 0 ? ['.'] : paths);
-  let failed = missing.length !== 0;
-  for (const path of missing) process.stderr.write(`lyate: ${plainLine(path)} does not exist\n`);
-  const sources: Source[] = [];
-  for (const file of files) {
-    const { text, problem } = readText(file);
-    if (text === undefined) {
-      process.stderr.write(`lyate: ${plainLine(file)} ${problem}\n`);
-      failed = true;
-    } else {
-      sources.push({ file, text });
-    }
-  }
-  return { sources, failed };
 }
 
 /** What is new against a baseline; files in it are named from where it stands. */

@@ -10,6 +10,7 @@ import { addCheck } from './check.ts';
 import { addExplain } from './explain.ts';
 import { addFlask } from './flask.ts';
 import { addFormat } from './format.ts';
+import { addReport } from './report.ts';
 import { addServe } from './serve.ts';
 import { addSites } from './sites.ts';
 import { addSuggest } from './suggest.ts';
@@ -20,7 +21,17 @@ const program = new Command('lyate')
   .version(`lyate ${packageFile.version}, tables ${builtTables().version}`)
   .exitOverride((error) => process.exit(error.exitCode === 0 ? 0 : 2));
 
-for (const add of [addCheck, addSites, addSuggest, addFlask, addWindow, addExplain, addFormat, addServe])
+for (const add of [
+  addCheck,
+  addReport,
+  addSites,
+  addSuggest,
+  addFlask,
+  addWindow,
+  addExplain,
+  addFormat,
+  addServe,
+])
   add(program);
 
 process.stdout.on('error', (error: NodeJS.ErrnoException) => process.exit(error.code === 'EPIPE' ? 0 : 2));
