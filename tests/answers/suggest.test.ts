@@ -145,3 +145,76 @@ test('asking again gives the same list, and lines above only move it', () => {
   expect(after!.list.map(({ title }) => title)).toEqual(before!.list.map(({ title }) => title));
   expect(after!.list[0]!.edits[0]!.range.start.line).toBe(before!.list[0]!.edits[0]!.range.start.line + 2);
 });
+
+test('edits in Markdown stand in the host document, and a step that goes on keeps the solvent of the one before', () => {
+  const text = `# A route
+
+\`\`\`lyate
+compound K = O=C([CH3:1])c1ccccc1
+step A
+  solvent THF 20 mL
+  temperature -78 °C
+  charge K 5 mmol
+\`\`\`
+
+Some words.
+
+\`\`\`lyate
+step B continues A
+  base Et3N 1.1 equiv
+  deprotonate K at :1
+\`\`\`
+`;
+  const read = (now: string) => analyseNow(analyser, { file: 'a.md', text: now, language: 'markdown' });
+  const [one] = suggestionsOf(read(text), 'B')!;
+  expect(one!.line).toBe(15);
+  // The solvent stands in another step, so none but it is offered.
+  expect(new Set(one!.list.map(({ option }) => option.solvent?.name))).toEqual(new Set(['THF']));
+  const lda = one!.list.find(({ option }) => option.reagent.name === 'LDA')!;
+  const after = edited(text, lda.edits);
+  expect(after).toContain('\n  base LDA 1.1 equiv\n');
+  expect(after).toContain('\n  solvent THF 20 mL\n');
+  expect(read(after).findings.filter(({ severity }) => severity === 'error')).toEqual([]);
+});
+
+test('a catalytic amount stays catalytic, and what is written and works comes first', () => {
+  const text = `compound M = CCOC(=O)[CH2:1]C(=O)OCC
+compound E = C=CC(C)=O
+compound P = CCOC(=O)C(CCC(C)=O)C(=O)OCC
+step A
+  solvent MeCN 20 mL
+  charge M 10 mmol
+  charge E 1.05 equiv
+  base DBU 10 mol%
+  deprotonate M at :1
+  convert M + E to P
+`;
+  const [one] = suggestionsOf(analyse(text), 'A')!;
+  expect(one!.asWritten.verdict.answer).toBe('yes');
+  expect(one!.list[0]!.option).toMatchObject({ reagent: { name: 'DBU' }, solvent: { name: 'MeCN' } });
+  expect(one!.list[0]!.option.equiv).toBeCloseTo(0.1, 6);
+});
+
+test('a step without any solvent is offered one on a line of its own', () => {
+  const text = KETONE.replace('  solvent     water 30 mL\n', '');
+  const lda = suggestionsOf(analyse(text), 'A')![0]!.list.find(({ title }) => title === 'LDA in THF')!;
+  const after = edited(text, lda.edits);
+  expect(after).toMatch(/\n {2}solvent THF\n/);
+  expect(errorsOf(after)).toEqual([]);
+});
+
+test.each([
+  ['an unknown solvent', KETONE.replace('water', 'moonshine')],
+  ['a mixture with an unknown part', KETONE.replace('water', 'moonshine/THF 1:1')],
+  ['an unreadable compound', KETONE.replace('O=C(', 'O=C((')],
+  ['a base without structure', KETONE.replace('NaOH', 'silica')],
+  ['no amount', KETONE.replace(' 10 mmol', '').replace(' 1.1 equiv', '')],
+  ['amounts that cannot be', KETONE.replace('10 mmol', '-3 mmol').replace('30 mL', '0 mL')],
+  ['a site that is not there', KETONE.replace('at :1', 'at :7')],
+  ['a temperature near nothing', KETONE.replace('  charge', '  temperature -270 °C\n  charge')],
+])('%s never stops it', (_, text) => {
+  for (const { list, refusals } of suggestionsOf(analyse(text), 'A')!) {
+    for (const { option } of list) expect(Number.isFinite(option.cost)).toBe(true);
+    expect(list.length + refusals.length).toBeGreaterThan(0);
+  }
+});

@@ -73,6 +73,7 @@ function want(
     acting: [2],
     solvents: [0],
     equiv: 1.1,
+    where: 'anywhere',
     breadth,
   };
 }

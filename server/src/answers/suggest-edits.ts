@@ -29,6 +29,8 @@ export interface Swap {
   /** Statements of the bases (acids) that it replaces; empty where there was none. */
   readonly acting: readonly Statement[];
   readonly loses: boolean;
+  /** There is no solvent yet. */
+  readonly needsSolvent: boolean;
   /** mol of the site's compound for each mol of the compound that `equiv` refers to. */
   readonly perReference: number;
 }
@@ -49,9 +51,10 @@ export function stepWith(swap: Swap): Step {
     const added = acting.length === 0 ? [addStatement(swap, transfer)] : [];
     const { range, keywordRange } = transfer;
     const to = option.temperature;
+    const bath = swap.needsSolvent && option.solvent !== null ? [newSolvent(swap)] : [];
     const change: Statement[] =
       to === temperature ? [] : [{ keyword: 'temperature', from: to, to, range, keywordRange }];
-    return [...added, ...change, statement];
+    return [...added, ...bath, ...change, statement];
   });
   return { ...step, statements };
 }
@@ -82,6 +85,8 @@ export function editsFor({ plan }: Analysed, firstLine: number, swap: Swap): Edi
     });
   for (const statement of others) drop(statement);
   const [solvent, ...more] = solventsBefore(swap);
+  if (solvent === undefined && swap.needsSolvent && option.solvent !== null)
+    before(`solvent ${option.solvent.name}`);
   if (solvent !== undefined && option.solvent !== null && !isSame(solvent, more, option)) {
     const parts = solvent.parts.map(({ substance }) => substance.range);
     // A mixture's ratio goes with it; a single solvent keeps its amount as written.
@@ -134,6 +139,35 @@ function solventStatement({ option }: Swap, before: SolventStatement): SolventSt
   return { ...before, parts: [{ substance, share: 1 }] };
 }
 
+/** A solvent of the usual volume. */
+function newSolvent(swap: Swap): SolventStatement {
+  const { range, keywordRange } = swap.transfer;
+  const amount: Amount = { ...UNSAID, assumed: true };
+  const part = { substance: { ...UNNAMED, range }, share: 1 };
+  return solventStatement(swap, { keyword: 'solvent', parts: [part], amount, range, keywordRange });
+}
+
+const UNSAID: Amount = {
+  mol: null,
+  equiv: null,
+  volume: null,
+  mass: null,
+  portions: 1,
+  qualifier: null,
+  assumed: false,
+  carriers: [],
+  range: null,
+};
+const UNNAMED = {
+  kind: 'solvent',
+  name: '',
+  smiles: null,
+  compound: null,
+  reagent: null,
+  solvent: null,
+  structureRange: null,
+} as const;
+
 function addStatement(swap: Swap, { range, keywordRange }: Statement): AddStatement {
   const { option, loses, step } = swap;
   const { reagent } = option;
@@ -148,17 +182,7 @@ function addStatement(swap: Swap, { range, keywordRange }: Statement): AddStatem
     range,
     structureRange: null,
   };
-  const amount: Amount = {
-    mol: equiv * step.referenceMol,
-    equiv,
-    volume: null,
-    mass: null,
-    portions: 1,
-    qualifier: null,
-    assumed: false,
-    carriers: [],
-    range: null,
-  };
+  const amount: Amount = { ...UNSAID, mol: equiv * step.referenceMol, equiv };
   return { keyword: loses ? 'base' : 'acid', substance, amount, range, keywordRange };
 }
 

@@ -52,6 +52,7 @@ export function createTrial(
       acting: statements,
       loses,
       perReference,
+      needsSolvent: !fact.contents.ingredients.some(({ role }) => role === 'solvent'),
       step,
     };
     const after = gatherFacts(stepWith(swap), before, tables, settings);

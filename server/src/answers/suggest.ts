@@ -162,6 +162,7 @@ function workOut(
       acting: [...acting.map(({ id }) => id), ...stocks],
       solvents: solvents.map(({ id }) => id),
       equiv: equivOf(acting, ingredient, Math.max(1, statement.sites.length)),
+      where: canChange(facts, solvents) ? 'anywhere' : 'as-written',
       breadth,
     },
     facts.tables,
@@ -230,6 +231,13 @@ function carriersOf({ additions }: StepFacts, acting: readonly Ingredient[]): nu
     ingredient.role === 'solvent' && statement !== null && statements.includes(statement)
       ? [ingredient.id]
       : [],
+  );
+}
+
+/** Whether the solvents stand in lines of this step, or there is none yet. */
+function canChange({ additions }: StepFacts, solvents: readonly Ingredient[]): boolean {
+  return solvents.every(({ id }) =>
+    additions.some(({ ingredient, statement }) => ingredient.id === id && statement?.keyword === 'solvent'),
   );
 }
 

@@ -38,6 +38,7 @@ export function solventsTried(
   written: readonly number[],
   id: number,
   tables: Tables,
+  where: 'anywhere' | 'as-written',
 ): { readonly places: Place[]; readonly never: { readonly solvent: SolventRow; readonly note: string }[] } {
   const own = contents.ingredients.filter((one) => written.includes(one.id));
   const volume = own.reduce<number | null>(
@@ -46,6 +47,10 @@ export function solventsTried(
   );
   const never: { solvent: SolventRow; note: string }[] = [];
   const places: Place[] = [];
+  if (where === 'as-written') {
+    const only = own.length === 1 ? own[0]!.solvent : null;
+    return { places: [{ solvent: only, ingredients: own, note: '', cost: 0, rank: -1 }], never };
+  }
   if (1 < own.length) places.push({ solvent: null, ingredients: own, note: '', cost: 0, rank: -1 });
   for (const solvent of tables.solvents) {
     const { usual, note, rank } = solventChoice(solvent, tables);

@@ -36,6 +36,8 @@ export interface Want {
   readonly acting: readonly number[];
   /** Ids of the solvents whose place a candidate takes. */
   readonly solvents: readonly number[];
+  /** as-written: the solvents can't be changed, because another step has put them in. */
+  readonly where: 'anywhere' | 'as-written';
   /** mol of candidate for each mol of the site. */
   readonly equiv: number;
   /** ordinary: what is rare is looked at only where nothing ordinary does it. */
@@ -177,10 +179,10 @@ class ScreeningRun {
   }
 
   run(): Screening {
-    const { contents, intent, solvents } = this.want;
+    const { contents, intent, solvents, where } = this.want;
     const asWritten = judgeTransfer(contents, intent, this.tables, this.constantsIn, this.thresholds);
     if (this.site?.molecule != null) {
-      const { places, never } = solventsTried(contents, solvents, this.nextId, this.tables);
+      const { places, never } = solventsTried(contents, solvents, this.nextId, this.tables, where);
       for (const { solvent, note } of never)
         this.rejections.push({ reagent: null, solvent, reason: { kind: 'not-proposed', note } });
       const pairs = choicesAs(this.loses ? 'base' : 'acid', this.tables)
@@ -234,7 +236,8 @@ class ScreeningRun {
   private outcomeOf(pair: Pair): Option | Reason {
     const { choice, place } = pair;
     const { reagent } = choice;
-    const { scale } = place.ingredients[0]!.solvent!;
+    // The tables name one of them at least, or the pair would not have come here.
+    const { scale } = place.ingredients.find((one) => one.solvent !== null)!.solvent!;
     const gap = this.reach.gapOf(reagent, perceive(reagent.smiles!, this.tables), scale);
     if (gap !== null && gap.best < -(this.want.intent.isConsumed ? STEADY : 0))
       return { kind: 'too-weak', short: -gap.plain };
