@@ -1,8 +1,9 @@
 /** The quench does not use up what is left of a hydride, metal amide or organometallic. */
-import type { CoupleState, Ingredient } from '../flask/state.ts';
+import type { Ingredient } from '../flask/state.ts';
 import type { Range } from '../route/plan.ts';
 import { defineCheck } from './define.ts';
 import type { Moment, StepFacts } from './facts.ts';
+import { shareLeft } from './left.ts';
 import { percent } from './verdicts.ts';
 
 export default defineCheck({
@@ -41,7 +42,7 @@ step A
     for (const one of moment.contents.ingredients) {
       if (!one.reagent?.roles.some((role) => LIVELY.has(role)) || one.qualifier === 'catalytic') continue;
       const able = one.mol * (one.reagent.protonCapacity ?? 1);
-      const left = leftOf(one, moment) * able - usedUp(one, facts);
+      const left = shareLeft(one, moment) * able - usedUp(one, facts);
       if (left < LEAST * able) continue;
       const reagent = facts.additions.find(({ ingredient }) => ingredient.id === one.id);
       yield {
@@ -64,16 +65,6 @@ const HYDRIDES_EACH = 4;
 /** The flask after the last quench; what a later wash brings comes too late. */
 function lastQuench({ moments }: StepFacts): Moment | undefined {
   return moments.filter(({ statement }) => statement.keyword === 'quench').at(-1);
-}
-
-/** Share of a base that holds no proton, by its strongest couple: the bromide of a Grignard reagent is none. */
-function leftOf({ id }: Ingredient, { state }: Moment): number {
-  const own = state().couples.filter(({ ingredient }) => ingredient === id);
-  const strongest = own.reduce<CoupleState | null>(
-    (best, one) => (best === null || best.constant.value < one.constant.value ? one : best),
-    null,
-  );
-  return strongest === null ? 0 : 1 - strongest.protonated;
 }
 
 /** mol of base that conversions of the step may have used up in another way than by taking a proton. */
