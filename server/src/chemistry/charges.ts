@@ -24,12 +24,18 @@ const CLOSE = 2;
 
 /** How much stronger an aromatic base acts on a site of the same ring system. */
 export function donationFactor(graph: Graph, first: number, second: number): number {
+  if (isRingNitrogen(graph, first) !== isRingNitrogen(graph, second)) return DONATION_ENDS;
   const near = (site: number) => coresOf(graph, site).filter(({ reach }) => reach <= CLOSE);
   const others = near(second);
   const shared = near(first).some(({ atoms, anchor }) =>
     others.some((other) => atoms.has(other.anchor) && other.atoms.has(anchor)),
   );
   return shared ? DONATION_ENDS : 1;
+}
+
+function isRingNitrogen(graph: Graph, index: number): boolean {
+  const { element, aromatic } = graph.atoms[index]!;
+  return element === 'N' && aromatic;
 }
 
 /** Interaction of unit charges at two atoms; 0 where they belong to different fragments. */

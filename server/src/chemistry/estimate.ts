@@ -83,7 +83,8 @@ export function estimateInWater(
     parts.set(part, (parts.get(part) ?? 0) + worth);
   }
   const statistical = Math.log10(equivalents) * (site.kind === 'acid' ? -1 : 1);
-  const sd = Math.sqrt(family.value ** 2 + novelty * (estimator.variances.get('novelty') ?? 1));
+  const doubt = family.value ** 2 + novelty * (estimator.variances.get('novelty') ?? 1);
+  const sd = Math.min(UNKNOWN_SD, Math.sqrt(doubt));
   return {
     value: value + statistical,
     sd,

@@ -84,22 +84,29 @@ function exactSteps(
   return assign(sites, steps);
 }
 
-/** Each step goes to the couple that loses most in it and still has a proton to lose. */
+/** Each step goes to the site that loses most in it, the clearest cases first; of equal sites the held one goes first. */
 function assign(
   sites: readonly MicroSite[],
   steps: readonly { readonly pK: number; readonly losses: readonly number[] }[],
 ): MicroStep[] {
-  const left = new Set(sites.keys());
-  return steps.map(({ pK, losses }) => {
-    let best = -1;
-    for (const site of left) {
-      const ahead = best === -1 ? Number.POSITIVE_INFINITY : losses[site]! - losses[best]!;
-      const tied = Math.abs(ahead) < 1e-6;
-      if (tied ? sites[best]!.held && !sites[site]!.held : 0 < ahead) best = site;
-    }
-    left.delete(best);
-    return { pK, couple: sites[best]!.couple };
-  });
+  const pairs = steps.flatMap(({ losses }, step) =>
+    losses.map((loss, site) => ({ step, site, loss: Math.round(loss * 1e6) })),
+  );
+  pairs.sort(
+    (a, b) =>
+      b.loss - a.loss ||
+      a.step - b.step ||
+      Number(sites[b.site]!.held) - Number(sites[a.site]!.held) ||
+      a.site - b.site,
+  );
+  const taken = new Set<number>();
+  const owners = new Map<number, number>();
+  for (const { step, site } of pairs) {
+    if (taken.has(site) || owners.has(step)) continue;
+    taken.add(site);
+    owners.set(step, site);
+  }
+  return steps.map(({ pK }, step) => ({ pK, couple: sites[owners.get(step)!]!.couple }));
 }
 
 /** The dominant state loses one proton after the other from its most acidic site. */

@@ -109,13 +109,17 @@ function addCore(
   add(`frameany:${frameName(graph, core)}.${core.reach === 0 ? 'in' : 'on'}`, response);
   for (const [atom, place] of core.places) {
     const kind = kinds[atom]!;
+    const standing = { place, line, response };
+    if (kind === 'n') {
+      addSigma(AZA, standing, add);
+      total += place === 'm' || place[2] === 'n' ? AZA.m : AZA.p;
+    }
     if (kind !== 'c') {
       add(`aza:${line}.${place}.${kind}`, response / PHENOL_RESPONSE);
       add(`aza:*.${place}.${kind}`, response);
     }
     for (const next of graph.atoms[atom]!.neighbours) {
       if (core.atoms.has(next) || orderBetween(graph, atom, next) === 0) continue;
-      const standing = { place, line, response };
       if (leadsBack(graph, atom, next, core)) {
         addTie(graph, next, standing, add);
         continue;
@@ -171,6 +175,9 @@ function addBay(kind: string, nearest: string, { line, response }: Standing, add
   add(`bay:${line}.${nearest}`, response / PHENOL_RESPONSE);
   add(`bay:${line}.${nearest}.${kind}`, response / PHENOL_RESPONSE);
 }
+
+/** A nitrogen in the place of a CH group of the ring, as a substituent (Perrin, Dempsey and Serjeant 1981). */
+const AZA: Sigma = { name: 'aza', m: 0.73, p: 0.83, minus: 0.3, plus: 0 };
 
 /** Resonance class of a place: ortho, meta, para, beside, across, or reached or not reached across a fusion. */
 function resonance(place: string): string {
