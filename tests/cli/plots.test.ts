@@ -66,7 +66,7 @@ test('what cannot be drawn is said', async () => {
 test('windows in words, as data and as a picture', async () => {
   const svg = join(folder, 'w.svg');
   const out = await run('window', 'THF', 'DMSO', 'water', 'benzene', '--absolute', '--svg', svg);
-  expect(out.trim().split('\n')).toHaveLength(4);
+  expect(out.trim().split('\n')).toHaveLength(5);
   expect(out).toMatch(/^THF .*no autoprotolysis constant known.*\(estimated\)/);
   expect(out).toMatch(/DMSO .*0\.0 to 33\.3; DMSO scale +absolute: 3\.4 ± 0\.4 to 36\.7 ± 0\.6/);
   expect(await run('window', 'DMSO')).not.toContain('absolute');

@@ -14,6 +14,9 @@ interface WindowOptions {
   readonly format: 'text' | 'json';
 }
 
+const NOTE =
+  'absolute: pH counted from the standard proton in water (Himmel, Goll, Leito, Krossing 2010); estimated ends come from the pKa of the solvent and of its protonated form.\n';
+
 /** Adds the command. */
 export function addWindow(program: Command): void {
   program
@@ -46,6 +49,7 @@ export function addWindow(program: Command): void {
         );
         process.stdout.write('\n');
       }
+      if (options.absolute) process.stdout.write(NOTE);
     });
 }
 
