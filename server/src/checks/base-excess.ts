@@ -25,13 +25,13 @@ step A
   base LDA 2 equiv 2.0 M in THF
   deprotonate P at :1
 `,
-  right: `compound P = O=C([CH3:1])CCC#[CH:2]
+  right: `compound P = O=C([CH3:1])CCC#C
 step A
   solvent THF 30 mL
   temperature -78 °C
   charge P 5 mmol
-  base LDA 2 equiv 2.0 M in THF
-  deprotonate P at :1, :2
+  base LDA 1.05 equiv 2.0 M in THF
+  deprotonate P at :1
 `,
   *inStep(facts) {
     const judged = judgedTransfers(facts)

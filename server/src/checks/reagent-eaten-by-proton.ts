@@ -29,6 +29,8 @@ export default defineCheck({
           continue;
         const other = contents.ingredients.find(({ id }) => id === fate.other.ingredient);
         if (other?.role !== 'compound' || fate.other.couple.element === 'C') continue;
+        // What the protons leave over still adds to every molecule.
+        if (other.mol <= (1 - fate.share) * addition.ingredient.mol) continue;
         said.add(fate.ingredient);
         yield {
           range: addition.range,
