@@ -4,7 +4,7 @@
  * `node server/tools/build.mjs [tables]`; without a word it builds all.
  */
 import { execFileSync } from 'node:child_process';
-import { existsSync, mkdirSync } from 'node:fs';
+import { copyFileSync, existsSync, mkdirSync } from 'node:fs';
 import { dirname, join } from 'node:path';
 import { fileURLToPath } from 'node:url';
 import { build } from 'esbuild';
@@ -59,6 +59,7 @@ async function bundle(options) {
 }
 
 mkdirSync(at('dist'), { recursive: true });
+copyFileSync(at('server/src/library-types.ts'), at('dist/library.d.ts'));
 await run('make-tables');
 await run('write-registry');
 if (process.argv[2] !== 'tables') {
@@ -71,7 +72,17 @@ if (process.argv[2] !== 'tables') {
       // It starts its threads from files of its own.
       external: ['tinypool'],
     }),
-    bundle({ ...node, entryPoints: ['server/src/cli/records-worker.ts'], outfile: 'dist/records-worker.cjs' }),
+    bundle({
+      ...node,
+      entryPoints: ['server/src/cli/records-worker.ts'],
+      outfile: 'dist/records-worker.cjs',
+    }),
+    bundle({
+      ...browser,
+      format: 'esm',
+      entryPoints: ['server/src/library.ts'],
+      outfile: 'dist/library.js',
+    }),
     bundle({ ...node, entryPoints: ['server/src/lsp/node.ts'], outfile: 'dist/server.cjs' }),
     bundle({
       ...browser,

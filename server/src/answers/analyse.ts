@@ -29,9 +29,13 @@ export interface Analyser {
 const CHECK_BY_NAME = new Map(CHECKS.map((check) => [check.name, check]));
 const STEPS_REMEMBERED = 4000;
 
-/** An analyser for one set of tables and settings. */
-export function createAnalyser(tables: Tables, settings: Settings = DEFAULT_SETTINGS): Analyser {
-  const remembered = boundedCache<string, AnalysedStep>(STEPS_REMEMBERED);
+/** An analyser for one set of tables and settings; `remember` is how many steps it keeps, few where plans never come again. */
+export function createAnalyser(
+  tables: Tables,
+  settings: Settings = DEFAULT_SETTINGS,
+  remember = STEPS_REMEMBERED,
+): Analyser {
+  const remembered = boundedCache<string, AnalysedStep>(remember);
   const reader: PlanReader = createPlanReader(tables, settings);
   return {
     *analyse(source, files = new Map()) {

@@ -12,9 +12,12 @@ import { element, type Markup, text } from './svg.ts';
 
 const WIDTH = 720;
 const ROW = 24;
-const LEFT = 250;
-const MARGIN = { right: 24, top: 30, bottom: 52 } as const;
+const LEFT = 296;
+const MARGIN = { right: 24, top: 44, bottom: 52 } as const;
 const HALF = 0.5;
+/** Heights of words above the rows: two, so that lines close together keep theirs apart. */
+const UPPER = 26;
+const LOWER = 10;
 
 /** An SVG document; null for a flask without sites. */
 export function ladderPlot(picture: FlaskPicture): string | null {
@@ -27,7 +30,7 @@ export function ladderPlot(picture: FlaskPicture): string | null {
   const x = scaleLinear([Math.floor(low - 1), Math.ceil(high + 1)], [LEFT, WIDTH - MARGIN.right]);
   const rowOf = new Map(rungs.map(({ id }, place) => [id, MARGIN.top + (place + HALF) * ROW]));
   const shown = (value: number) => x.domain()[0]! <= value && value <= x.domain()[1]!;
-  const down = (value: number, word: string): Markup[] =>
+  const down = (value: number, word: string, above: number): Markup[] =>
     shown(value)
       ? [
           element('line', {
@@ -37,7 +40,7 @@ export function ladderPlot(picture: FlaskPicture): string | null {
             y1: MARGIN.top - 6,
             y2: height - MARGIN.bottom,
           }),
-          text('text', { class: 'note', x: x(value), y: MARGIN.top - 12, 'text-anchor': 'middle' }, word),
+          text('text', { class: 'note', x: x(value), y: MARGIN.top - above, 'text-anchor': 'middle' }, word),
         ]
       : [];
   return page(
@@ -48,8 +51,8 @@ export function ladderPlot(picture: FlaskPicture): string | null {
       description: describe(picture),
     },
     axisBelow(frame, x, `pKa (${scale})`),
-    ...(pH === null ? [] : down(pH, `pH ${oneDecimal(pH)}`)),
-    ...(window === null ? [] : [...down(window.low, 'lyonium'), ...down(window.high, 'lyate')]),
+    ...(pH === null ? [] : down(pH, `pH ${oneDecimal(pH)}`, UPPER)),
+    ...(window === null ? [] : [...down(window.low, 'lyonium', LOWER), ...down(window.high, 'lyate', LOWER)]),
     ...rungs.map((rung) => row(rung, x, rowOf.get(rung.id)!)),
     ...arrows.flatMap(({ from, to, answer, logK }) => {
       const [a, b] = [rungs.find(({ id }) => id === from), rungs.find(({ id }) => id === to)];
@@ -119,6 +122,6 @@ function arrow(x1: number, y1: number, x2: number, y2: number, words: string): M
       d: `M ${x1.toFixed(1)} ${y1.toFixed(1)} L ${x2.toFixed(1)} ${y2.toFixed(1)}`,
     }),
     element('path', { class: 'curve k1', d: `${wing(1)} ${wing(-1)}` }),
-    text('text', { x: (x1 + x2) / 2 + 8, y: (y1 + y2) / 2 + 4 }, words),
+    text('text', { x: Math.min(x1, x2) - 10, y: (y1 + y2) / 2 + 4, 'text-anchor': 'end' }, words),
   ];
 }

@@ -7,6 +7,7 @@ import { Command } from 'commander';
 import packageFile from '../../../package.json' with { type: 'json' };
 import { builtTables } from '../host/tables.ts';
 import { addCheck } from './check.ts';
+import { addDiff } from './diff.ts';
 import { addExplain } from './explain.ts';
 import { addFlask } from './flask.ts';
 import { addFormat } from './format.ts';
@@ -24,6 +25,7 @@ const program = new Command('lyate')
 for (const add of [
   addCheck,
   addReport,
+  addDiff,
   addSites,
   addSuggest,
   addFlask,

@@ -6,13 +6,16 @@ import { plainFinding } from '../report/json.ts';
 /** Name of the plan in a record; it stands as if in the current folder, under its configuration. */
 const NAME = 'record.lyate';
 
+/** Records hardly ever repeat a step, and a step holds its whole flask. */
+const STEPS_REMEMBERED = 32;
+
 /** Answers lines, each with a line; never throws. */
 export function createRecordAnswers(): (line: string | null) => string {
   let analyser: Analyser | undefined;
   const analyse = (text: string) => {
     if (analyser === undefined) {
       const { configured, settings } = createPlanDesk().surroundings(NAME);
-      analyser = createAnalyser(configured.tables, settings);
+      analyser = createAnalyser(configured.tables, settings, STEPS_REMEMBERED);
     }
     return analyseNow(analyser, { file: NAME, text, language: 'lyate' });
   };

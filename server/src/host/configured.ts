@@ -9,8 +9,8 @@ import { type Analyser, createAnalyser } from '../answers/analyse.ts';
 import { type Asking, type Configured, configure, settingsOf } from '../answers/configured.ts';
 import type { Analysed, SourceText } from '../answers/types.ts';
 import type { Settings } from '../checks/settings.ts';
-import { inside, readText, workspaceOf } from './files.ts';
-import { analyseIn } from './plans.ts';
+import { workspaceOf } from './files.ts';
+import { analyseIn, onDisk, type Reader, textBelow } from './plans.ts';
 import { builtTables } from './tables.ts';
 
 export interface Surroundings {
@@ -27,8 +27,11 @@ export interface PlanDesk {
   used(): ReadonlyMap<string, Configured>;
 }
 
-/** @param top folder above which nothing is looked for; everything up to the file system's root where undefined */
-export function createPlanDesk(top?: string): PlanDesk {
+/**
+ * @param top folder above which nothing is looked for; everything up to the file system's root where undefined
+ * @param read text of a file that was found to lie inside; the one on disk where undefined
+ */
+export function createPlanDesk(top?: string, read: Reader = onDisk): PlanDesk {
   const byRoot = new Map<string, Configured>();
   const analysers = new Map<string, Analyser>();
 
@@ -36,7 +39,7 @@ export function createPlanDesk(top?: string): PlanDesk {
     const root = workspaceOf(file, top === undefined ? [] : [top]);
     let configured = byRoot.get(root);
     if (configured === undefined) {
-      configured = answered(configure(builtTables()), (path) => textBelow(root, path));
+      configured = answered(configure(builtTables()), (path) => textBelow(root, path, read));
       byRoot.set(root, configured);
     }
     return { root, configured, settings: settingsOf(configured, pathBelow(root, file)) };
@@ -53,7 +56,7 @@ export function createPlanDesk(top?: string): PlanDesk {
         analyser = createAnalyser(configured.tables, settings);
         analysers.set(key, analyser);
       }
-      return analyseIn(root, analyser, source);
+      return analyseIn(root, analyser, source, read);
     },
   };
 }
@@ -73,9 +76,4 @@ function answered<Answer>(asking: Asking<Answer>, text: (path: string) => string
   let turn = asking.next();
   while (!turn.done) turn = asking.next(text(turn.value));
   return turn.value;
-}
-
-function textBelow(root: string, path: string): string | null {
-  const place = inside(root, path);
-  return place === null ? null : (readText(place).text ?? null);
 }

@@ -17,19 +17,30 @@ export function analyseWithFiles(analyser: Analyser, source: SourceText): Analys
 }
 
 /** The same below a given workspace; paths of `use` are relative to it. */
-export function analyseIn(workspace: string, analyser: Analyser, source: SourceText): Analysed {
+export function analyseIn(
+  workspace: string,
+  analyser: Analyser,
+  source: SourceText,
+  read: Reader = onDisk,
+): Analysed {
   const files = new Map<string, string | null>();
   const place = relative(workspace, resolve(source.file)).split('\\').join('/');
   let analysed = analyseNow(analyser, { ...source, file: place }, files);
   for (let round = 0; round < ROUNDS && analysed.plan.needs.length !== 0; round++) {
-    for (const need of analysed.plan.needs) files.set(need, textInside(workspace, need));
+    for (const need of analysed.plan.needs) files.set(need, textBelow(workspace, need, read));
     analysed = analyseNow(analyser, { ...source, file: place }, files);
   }
   return { ...analysed, source };
 }
 
 /** Text of a file below a folder; null where it is missing, unreadable or outside. */
-function textInside(workspace: string, path: string): string | null {
+export function textBelow(workspace: string, path: string, read: Reader): string | null {
   const found = inside(workspace, path);
-  return found === null ? null : (readText(found).text ?? null);
+  return found === null ? null : read(found);
 }
+
+/** Text of a file by its full path; null where there is none. */
+export type Reader = (path: string) => string | null;
+
+/** Reads files as they are now. */
+export const onDisk: Reader = (path) => readText(path).text ?? null;
