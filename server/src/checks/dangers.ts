@@ -5,6 +5,7 @@
  * Units: mol, shares 0 … 1.
  * Invariant: a row speaks once in a step; what a conversion has used up is no longer there.   (tests/checks/toxic-gas.md)
  */
+import { isSolidBase } from '../flask/medium.ts';
 import type { CoupleState, Ingredient } from '../flask/state.ts';
 import type { Range } from '../route/plan.ts';
 import type { CautionRow } from '../tables/rows.ts';
@@ -76,8 +77,13 @@ function dangerOfGroup(row: CautionRow, moment: Moment, range: Range): Danger | 
   const { ingredients } = moment.contents;
   if (!ingredients.some(({ molecule }) => molecule?.couples.some(({ group }) => group === row.group)))
     return null;
-  const { couples, gases } = moment.state();
-  const own = fullyProtonated(couples.filter(({ couple }) => couple.group === row.group));
+  const { couples, gases, medium } = moment.state();
+  // A solid carbonate in a dry solvent takes one proton at its surface and stays hydrogen carbonate.
+  const dry = !medium.protic && medium.organic === null;
+  const solid = new Set(ingredients.filter((one) => dry && isSolidBase(one)).map(({ id }) => id));
+  const own = fullyProtonated(
+    couples.filter(({ couple, ingredient }) => couple.group === row.group && !solid.has(ingredient)),
+  );
   const sum = (of: (one: CoupleState) => number) => own.reduce((total, one) => total + of(one), 0);
   const gone = gases
     .filter(({ ingredient }) => own.some((one) => one.ingredient === ingredient))
