@@ -257,3 +257,13 @@ test('solvents that are never proposed are named with the reason', () => {
   });
   expect(ketone.options.some(({ solvent }) => solvent?.name === 'benzene')).toBe(false);
 });
+
+test('a base that falls apart in a solvent says how long it lives there and comes later', () => {
+  const { options } = screen(want('CCCCC#[CH:1]', 's-BuLi', 'THF', { celsius: -20 }), tables);
+  const butyl = options.filter(({ reagent }) => reagent.name === 'n-BuLi');
+  const inThf = butyl.find(({ solvent }) => solvent?.name === 'THF')!;
+  expect(inThf.halfLife).toBeGreaterThan(17);
+  const inDme = butyl.find(({ solvent }) => solvent?.name === 'DME')!;
+  expect(inDme.halfLife).toBeCloseTo(1.85, 1);
+  expect(inThf.cost).toBeLessThan(inDme.cost);
+});

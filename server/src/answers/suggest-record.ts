@@ -50,7 +50,8 @@ function verdictRecord({
 }
 
 function suggestionRecord({ option, alsoIn, cautions, title, edits }: Suggestion) {
-  const { reagent, solvent, equiv, temperature, usual, verdict, next, ahead, limit, notes, cost } = option;
+  const { reagent, solvent, equiv, temperature, usual, verdict, next, ahead, limit, halfLife, notes, cost } =
+    option;
   const sites = (list: typeof ahead) =>
     list.map(({ site, difference, sd }) => ({
       group: site.couple.group,
@@ -69,10 +70,8 @@ function suggestionRecord({ option, alsoIn, cautions, title, edits }: Suggestion
     allowances: verdict.allowances,
     ahead: sites(ahead),
     next: next === null ? null : sites([next])[0]!,
-    limit:
-      limit === null
-        ? null
-        : { what: limit.what, temperature: limit.temperature, halfLifeHours: limit.halfLifeHours },
+    limit: limit === null ? null : limit.what,
+    halfLifeHours: halfLife,
     notes,
     cautions,
     alsoIn,

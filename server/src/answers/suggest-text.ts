@@ -4,8 +4,9 @@
  * Knows: suggestions.  Must not know: files, colours.
  * Units: °C, equivalents, units of pKa.
  */
-import { marginOf, type Reason } from '../flask/suggest.ts';
-import { oneDecimal, percent } from './figures.ts';
+import type { Reason } from '../flask/suggest.ts';
+import { marginOf } from '../flask/suggest-cost.ts';
+import { figure, oneDecimal, percent } from './figures.ts';
 import type { Refusal, Suggestion, Suggestions } from './suggest.ts';
 
 const ZERO_CELSIUS = 273.15;
@@ -100,7 +101,7 @@ function table(list: readonly Suggestion[], direction: 'deprotonate' | 'protonat
 
 /** What a chemist weighs before taking it, one line each. */
 function remarks({ option, cautions }: Suggestion): string[] {
-  const { verdict, limit, notes, ahead } = option;
+  const { verdict, limit, halfLife, notes, ahead } = option;
   const said = [
     ...(ahead.length === 0
       ? []
@@ -116,9 +117,7 @@ function remarks({ option, cautions }: Suggestion): string[] {
     ...(verdict.borrowed ? ['hangs on a scale that the solvent borrows'] : []),
     ...(limit === null
       ? []
-      : [
-          `${limit.what}${limit.halfLifeHours === null ? '' : `; half is gone in ${limit.halfLifeHours} h at ${limit.temperature} °C`}`,
-        ]),
+      : [`${limit.what}${halfLife === null ? '' : `; half is gone in ${figure(halfLife)} h here`}`]),
     ...notes,
     ...cautions.map(({ check, message }) => `${check}: ${message}`),
   ];

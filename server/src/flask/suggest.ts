@@ -24,9 +24,11 @@ import {
 } from './choices.ts';
 import { firstSites, lostToSolvent, type OtherSite, siteOrder } from './fates.ts';
 import { type Intent, judgeTransfer, type VerdictThresholds } from './judge.ts';
+import { lifetimeAt } from './lifetime.ts';
 import { createReach, type Reach } from './reach.ts';
 import { type Place, solventsTried } from './solvents-tried.ts';
 import type { ConstantsIn, Contents, Ingredient, Verdict } from './state.ts';
+import { COST, costOf, isShort } from './suggest-cost.ts';
 
 /** What is wanted: a transfer in a flask, and what may be put in place of what. */
 export interface Want {
@@ -59,8 +61,10 @@ export interface Option {
   readonly ahead: readonly OtherSite[];
   /** The next site after the meant one. */
   readonly next: OtherSite | null;
-  /** What is known against the reagent in this solvent at this temperature. */
+  /** What is known against the reagent in this solvent, at this temperature or below. */
   readonly limit: LimitRow | null;
+  /** Hours until half of it is gone at this temperature; null where that is not known. */
+  readonly halfLife: number | null;
   readonly notes: readonly string[];
   readonly cost: number;
   /** Place of the solvent among all, to settle ties. */
@@ -102,25 +106,11 @@ const USUAL_SIZE = 8;
 const ENOUGH = 12;
 const FOR_GOOD = new Set<string>(['metal-hydride', 'metal-amide', 'organometallic', 'aluminium-hydride']);
 const LOST = 0.1;
-const WORKING_DAY = 10;
 /** Excess over what the sites ask for. */
 const EXCESS = 1.05;
 const SURELY_FIRST = 0.8;
 /** A small steady amount is enough for a conversion down to this log K. */
 const STEADY = 8;
-
-/** What speaks against an option, in units of pKa. */
-const COST = {
-  newReagent: 0.6,
-  otherTemperature: 0.2,
-  limit: 1.5,
-  ahead: 2,
-  undecided: 4,
-  steady: 3,
-  slimMargin: { below: 1.5, unit: 0.8 },
-  idleMargin: { above: 6, unit: 0.03 },
-  nextSite: { below: 3, unit: 0.7 },
-} as const;
 
 /** Screens all bases (acids) and solvents for a transfer. */
 export function screen(
@@ -295,7 +285,7 @@ class ScreeningRun {
     const next =
       order.find((one) => 0 < one.difference && !ahead.includes(one) && one.probability < SURELY_FIRST) ??
       null;
-    const limit = this.limitOf(reagent, place, temperature);
+    const { limit, halfLife } = this.lifeOf(reagent, place, temperature);
     const notes = [row.note, place.note].filter((note) => note !== '');
     const isWrittenReagent = contents.ingredients.some(
       ({ id, reagent: own }) => this.want.acting.includes(id) && own?.name === reagent.name,
@@ -306,14 +296,14 @@ class ScreeningRun {
       temperature === contents.temperature &&
       equiv === asked;
     // What is written and works needs no other to take its place.
-    const keeps = isAsWritten && verdict.answer === 'yes' && !isShort(limit);
+    const keeps = isAsWritten && verdict.answer === 'yes' && !isShort(halfLife);
     const cost = keeps
       ? 0
       : USUAL_COST[row.usual] +
         place.cost +
         (isWrittenReagent ? 0 : COST.newReagent) +
         (temperature === contents.temperature ? 0 : COST.otherTemperature) +
-        (isShort(limit) ? COST.limit : 0) +
+        (isShort(halfLife) ? COST.limit : 0) +
         (ahead.length === 0 ? 0 : COST.ahead) +
         costOf(verdict, next, this.loses);
     return {
@@ -326,6 +316,7 @@ class ScreeningRun {
       ahead,
       next,
       limit,
+      halfLife,
       notes,
       cost,
       rank: place.rank,
@@ -336,17 +327,24 @@ class ScreeningRun {
     return judgeTransfer(contents, this.want.intent, this.tables, this.constantsIn, this.thresholds);
   }
 
-  /** What is known against a reagent in a solvent at this temperature or below. */
-  private limitOf(reagent: ReagentRow, { ingredients }: Place, temperature: number): LimitRow | null {
+  /** What is known against a reagent in a solvent, the shortest life where there are several solvents. */
+  private lifeOf(
+    { name }: ReagentRow,
+    { ingredients }: Place,
+    temperature: number,
+  ): { limit: LimitRow | null; halfLife: number | null } {
     const celsius = temperature - ZERO_CELSIUS;
-    return (
-      this.tables.limits.find(
-        (row) =>
-          row.reagent === reagent.name &&
-          row.temperature <= celsius &&
-          ingredients.some(({ solvent }) => solvent?.name === row.solvent),
-      ) ?? null
+    const { limits } = this.tables;
+    const solvents = ingredients.flatMap(({ solvent }) => solvent?.name ?? []);
+    const lives = solvents.flatMap((solvent) => lifetimeAt(limits, name, solvent, celsius) ?? []);
+    const [shortest] = lives.sort((a, b) => a.hours - b.hours);
+    const said = limits.find(
+      (row) => row.reagent === name && row.temperature <= celsius && solvents.includes(row.solvent),
     );
+    return {
+      limit: said ?? (isShort(shortest?.hours ?? null) ? shortest!.row : null),
+      halfLife: shortest?.hours ?? null,
+    };
   }
 }
 
@@ -356,33 +354,6 @@ function rangeOf(solvent: SolventRow | null, temperature: number): Reason | null
   if (solvent?.boilingPoint != null && solvent.boilingPoint + 1 < celsius)
     return { kind: 'boils', temperature };
   return null;
-}
-
-/** Whether half of the reagent is known to be gone within a working day. */
-function isShort(limit: LimitRow | null): boolean {
-  return limit?.halfLifeHours != null && limit.halfLifeHours < WORKING_DAY;
-}
-
-/** Units to spare; where the product gives its proton instead, those of the net reaction. */
-export function marginOf({ margin, net }: Verdict): number {
-  return net === null ? margin : net.logK;
-}
-
-function costOf(verdict: Verdict, next: OtherSite | null, loses: boolean): number {
-  const { answer, allowances, probability, partner, net } = verdict;
-  const margin = marginOf(verdict);
-  const { slimMargin, idleMargin, nextSite } = COST;
-  let cost = net === null ? 2 * probability : 0;
-  if (answer === 'undecided') cost += COST.undecided;
-  if (allowances.includes('steady-amount')) cost += COST.steady;
-  cost += slimMargin.unit * Math.max(0, Math.min(slimMargin.below - margin, 6));
-  cost += idleMargin.unit * Math.max(0, margin - idleMargin.above);
-  if (next !== null && partner !== null) {
-    const gap = partner.constant.value - next.site.constant.value;
-    // A base that cannot take the next site leaves it alone even in excess.
-    if (0 < (loses ? gap : -gap)) cost += nextSite.unit * Math.max(0, nextSite.below - next.difference);
-  }
-  return cost;
 }
 
 function compare(a = '', b = ''): number {
