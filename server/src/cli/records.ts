@@ -23,6 +23,9 @@ const BATCH = 32;
 /** Batches in hand for each worker, so that none waits for the next. */
 const IN_HAND = 3;
 
+/** MB of a worker's heap; a record needs some ten, tables and caches two hundred. */
+const WORKER_MEMORY = 512;
+
 /** Answers every record; a bad one gets an error of its own and the run goes on. */
 export async function checkRecords({ jobs, skipDone }: RecordOptions): Promise<number> {
   const done = skipDone === undefined ? new Set<string>() : await idsIn(skipDone);
@@ -38,6 +41,8 @@ export async function checkRecords({ jobs, skipDone }: RecordOptions): Promise<n
     minThreads: jobs,
     maxThreads: jobs,
     runtime: 'worker_threads',
+    // Keeps each worker tidy: without it the memory of a long run only ever grows.
+    resourceLimits: { maxOldGenerationSizeMb: WORKER_MEMORY },
   });
   const waiting: Promise<string[]>[] = [];
   const writeFirst = async () => {
@@ -45,15 +50,30 @@ export async function checkRecords({ jobs, skipDone }: RecordOptions): Promise<n
     await write(answers.map((answer) => `${answer}\n`).join(''));
   };
   for await (const batch of batches(openRecords(done))) {
-    const answers: Promise<string[]> = pool.run(batch);
-    // The first of the row is awaited below; a later one that fails must not count as unheard until then.
-    answers.catch(() => {});
-    waiting.push(answers);
+    waiting.push(answersTo(batch, (lines) => pool.run(lines)));
     if (jobs * IN_HAND <= waiting.length) await writeFirst();
   }
   while (waiting.length !== 0) await writeFirst();
   await pool.destroy();
   return 0;
+}
+
+/** Answers of a batch, whatever happens; where it takes its worker down, each record is tried alone, so that only the bad one is lost. */
+export async function answersTo(
+  batch: readonly Line[],
+  run: (lines: readonly Line[]) => Promise<string[]>,
+): Promise<string[]> {
+  try {
+    return await run(batch);
+  } catch (error) {
+    if (batch.length !== 1) {
+      const answers: string[] = [];
+      for (const line of batch) answers.push(...(await answersTo([line], run)));
+      return answers;
+    }
+    const id = JSON.parse(idOf(batch[0] ?? '') ?? 'null');
+    return [JSON.stringify({ id, error: `this record could not be worked on: ${(error as Error).message}` })];
+  }
 }
 
 async function* openRecords(done: ReadonlySet<string>): AsyncGenerator<Line> {

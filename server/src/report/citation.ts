@@ -25,7 +25,7 @@ interface Work {
   readonly note?: string;
 }
 
-/** "Family, G.; … Title. Journal year, volume, pages. doi:…"; the key itself for what has no title. */
+/** "Family, G.; … Title. Journal year, volume, pages. doi:…"; the key itself for what has neither title nor journal. */
 export function citation(work: unknown): string {
   const {
     id,
@@ -40,7 +40,7 @@ export function citation(work: unknown): string {
     note,
     ...rest
   } = work as Work;
-  if (title === undefined) return id;
+  if (title === undefined && rest['container-title'] === undefined) return id;
   const people = author.map(
     ({ family, given, literal }) => literal ?? [family, given].filter(Boolean).join(', '),
   );
