@@ -56,8 +56,24 @@ function shareBond(first: readonly number[], second: readonly number[]): boolean
   return 2 <= first.filter((atom) => second.includes(atom)).length;
 }
 
+const coresBySite = new WeakMap<Graph, Map<number, readonly Core[]>>();
+
 /** The ring systems that bear on a site, nearest first. */
-export function coresOf(graph: Graph, site: number): Core[] {
+export function coresOf(graph: Graph, site: number): readonly Core[] {
+  let found = coresBySite.get(graph);
+  if (found === undefined) {
+    found = new Map();
+    coresBySite.set(graph, found);
+  }
+  let cores = found.get(site);
+  if (cores === undefined) {
+    cores = findCores(graph, site);
+    found.set(site, cores);
+  }
+  return cores;
+}
+
+function findCores(graph: Graph, site: number): Core[] {
   const cores: Core[] = [];
   for (const atoms of ringSystems(graph)) {
     const set = new Set(atoms);

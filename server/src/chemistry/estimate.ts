@@ -12,7 +12,7 @@ import type { SpreadRow, SubstituentRow, TermRow } from '../tables/rows.ts';
 import type { Constant, Hop } from './couple.ts';
 import type { Graph } from './graph.ts';
 import { readSubstituents, type Substituents } from './substituents.ts';
-import { type Site, type Term, termClass, termsOf } from './terms.ts';
+import { type Site, termClass, termsOf } from './terms.ts';
 
 /** What the estimator needs of a group. */
 export interface ParentRow {
@@ -33,10 +33,19 @@ export interface EstimatorTables {
 
 interface Estimator {
   readonly substituents: Substituents;
-  readonly values: ReadonlyMap<string, TermRow>;
+  readonly values: ReadonlyMap<string, KnownTerm>;
   readonly families: ReadonlyMap<string, SpreadRow>;
   readonly variances: ReadonlyMap<string, number>;
   readonly parents: ReadonlyMap<string, ParentRow>;
+}
+
+/** A term of the table with what an estimate asks of it. */
+interface KnownTerm {
+  readonly value: number;
+  readonly n: number;
+  /** Variance that is left for a factor of one. */
+  readonly doubt: number;
+  readonly part: string;
 }
 
 /** All sums start from the middle of the scale. */
@@ -74,13 +83,11 @@ export function estimateInWater(
   const parts = new Map<string, number>();
   for (const term of terms) {
     const known = estimator.values.get(term.name);
-    const prior = estimator.variances.get(termClass(term.name)) ?? 0;
-    novelty += prior * doubtLeft(known?.n ?? 0) * term.factor ** 2;
+    novelty += (known ?? unknownTerm(term.name, estimator)).doubt * term.factor ** 2;
     if (known === undefined) continue;
     const worth = known.value * term.factor;
     value += worth;
-    const part = partOf(term);
-    parts.set(part, (parts.get(part) ?? 0) + worth);
+    parts.set(known.part, (parts.get(known.part) ?? 0) + worth);
   }
   const statistical = Math.log10(equivalents) * (site.kind === 'acid' ? -1 : 1);
   const doubt = family.value ** 2 + novelty * (estimator.variances.get('novelty') ?? 1);
@@ -153,7 +160,11 @@ const PARTS: Readonly<Record<string, string>> = {
   charge: 'charges',
 };
 
-function partOf({ name }: Term): string {
+function unknownTerm(name: string, { variances }: Pick<Estimator, 'variances'>): { readonly doubt: number } {
+  return { doubt: variances.get(termClass(name)) ?? 0 };
+}
+
+function partOf(name: string): string {
   return (
     PARTS[name.slice(0, name.indexOf(':'))] ??
     (name.startsWith('ring') ? 'ring size' : 'atoms along the chain')
@@ -163,13 +174,19 @@ function partOf({ name }: Term): string {
 function estimatorOf(tables: EstimatorTables): Estimator {
   const known = estimators.get(tables);
   if (known !== undefined) return known;
+  const variances = new Map(
+    tables.spreads.filter(({ kind }) => kind === 'term').map(({ name, value }) => [name, value]),
+  );
   const made: Estimator = {
     substituents: readSubstituents(tables.substituents),
-    values: new Map(tables.terms.map((row) => [row.name, row])),
-    families: new Map(tables.spreads.filter(({ kind }) => kind === 'family').map((row) => [row.name, row])),
-    variances: new Map(
-      tables.spreads.filter(({ kind }) => kind === 'term').map(({ name, value }) => [name, value]),
+    values: new Map(
+      tables.terms.map(({ name, value, n }) => {
+        const doubt = unknownTerm(name, { variances }).doubt * doubtLeft(n);
+        return [name, { value, n, doubt, part: partOf(name) }];
+      }),
     ),
+    families: new Map(tables.spreads.filter(({ kind }) => kind === 'family').map((row) => [row.name, row])),
+    variances,
     parents: new Map(tables.groups.map((row) => [row.id, row])),
   };
   estimators.set(tables, made);

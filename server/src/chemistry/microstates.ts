@@ -48,17 +48,20 @@ function exactSteps(
   const weights = sites.map((_, i) => sites.map((_, j) => (i === j ? 0 : interaction(i, j))));
   const charge = (site: number, protonated: boolean) =>
     sites[site]!.kind === 'acid' ? (protonated ? 0 : -1) : protonated ? 1 : 0;
-  // Free energies in pK units relative to the neutral form, gathered by the number of protons.
-  const energies: number[] = new Array(1 << n);
-  for (let state = 0; state < 1 << n; state++) {
-    let energy = 0;
-    for (let i = 0; i < n; i++) {
-      const q = charge(i, (state & (1 << i)) !== 0);
-      if (q === 0) continue;
-      energy += q < 0 ? sites[i]!.pK : -sites[i]!.pK;
-      for (let j = 0; j < i; j++) energy += weights[i]![j]! * q * charge(j, (state & (1 << j)) !== 0);
-    }
-    energies[state] = energy;
+  // Free energies in pK units relative to the neutral form; each state is another one with one more proton.
+  const energies = new Float64Array(1 << n);
+  const bare = sites.map((_, site) => charge(site, false));
+  energies[0] = bare.reduce<number>((sum, q, i) => {
+    const pushed = bare.slice(0, i).reduce<number>((push, other, j) => push + weights[i]![j]! * other, 0);
+    return sum + q * (pushed - sites[i]!.pK);
+  }, 0);
+  for (let state = 1; state < 1 << n; state++) {
+    const i = 31 - Math.clz32(state & -state);
+    const before = state & (state - 1);
+    let push = 0;
+    for (let j = 0; j < n; j++) if (j !== i) push += weights[i]![j]! * charge(j, (before & (1 << j)) !== 0);
+    // Whether an anion is quenched or a cation made, the charge rises by one.
+    energies[state] = energies[before]! - sites[i]!.pK + push;
   }
   const lowest = new Array<number>(n + 1).fill(Number.POSITIVE_INFINITY);
   for (let state = 0; state < 1 << n; state++) {

@@ -32,8 +32,20 @@ const HYPERVALENT = new Set(['P', 'As', 'Si']);
 const ONIUM = new Set(['N', 'O', 'S', 'P', 'Se']);
 const SYMBOLS: readonly BondSymbol[] = ['-', '-', '=', '#', '$'];
 
+/** Reference forms already built, which die with their graphs. */
+const known = new WeakMap<Graph, NeutralForm>();
+
 /** The reference form of a graph; the graph itself where no other form can be built. */
 export function neutralForm(source: Graph): NeutralForm {
+  let form = known.get(source);
+  if (form === undefined) {
+    form = makeForm(source);
+    known.set(source, form);
+  }
+  return form;
+}
+
+function makeForm(source: Graph): NeutralForm {
   const draft: Draft = {
     source,
     charges: source.atoms.map(({ charge }) => charge),

@@ -71,13 +71,15 @@ const FAMILY_RESPONSE: Readonly<Record<string, number>> = {
  * @param substituents the published constants, indexed
  */
 export function termsOf(graph: Graph, site: Site, substituents: Substituents): Term[] {
-  const terms: Term[] = [];
+  const sums = new Map<string, number>();
   const series = `${site.kind[0]}.${site.family}`;
   const answer = FAMILY_RESPONSE[site.family] ?? 1;
-  const addRaw = (name: string, factor: number) => terms.push({ name, factor });
+  const addRaw = (name: string, factor: number) => {
+    sums.set(name, (sums.get(name) ?? 0) + factor);
+  };
   const add = (name: string, factor: number) =>
     addRaw(name, name.includes(`:${series}`) ? factor * answer : factor);
-  terms.push({ name: `series:${series}`, factor: 1 });
+  addRaw(`series:${series}`, 1);
   add(`group:${site.group}`, 1);
   for (const depth of [1, 3]) add(`near${depth}:${site.kind[0]}${unfolded(graph, site.atom, -1, depth)}`, 1);
   const cores = coresOf(graph, site.atom);
@@ -86,7 +88,7 @@ export function termsOf(graph: Graph, site: Site, substituents: Substituents): T
   addChain(graph, site, series, answer, cores, add);
   addRings(graph, site, series, add);
   addCharges(graph, site, series, add);
-  return merged(terms);
+  return [...sums].map(([name, factor]) => ({ name, factor }));
 }
 
 type Add = (name: string, factor: number) => void;
@@ -357,10 +359,4 @@ export function termClass(name: string): string {
   const colon = name.indexOf(':');
   const kind = name.slice(0, colon);
   return name[colon + 1] === '*' ? `${kind}-any` : kind;
-}
-
-function merged(terms: readonly Term[]): Term[] {
-  const sums = new Map<string, number>();
-  for (const { name, factor } of terms) sums.set(name, (sums.get(name) ?? 0) + factor);
-  return [...sums].map(([name, factor]) => ({ name, factor }));
 }
