@@ -7,10 +7,10 @@ import { createHash } from 'node:crypto';
 import { existsSync, mkdirSync, readFileSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { markedSite, substanceIdentity } from '../src/chemistry/row-keys.ts';
-import { parseSmarts } from '../src/chemistry/smarts.ts';
+import { type Pattern, parseSmarts } from '../src/chemistry/smarts.ts';
 import { foldName } from '../src/tables/fold-name.ts';
 import type { CautionRow, ChoiceRow, Trigger } from '../src/tables/rows.ts';
-import type { FoldedTable } from '../src/tables/tables.ts';
+import type { FoldedPattern, FoldedTable, PatternPool } from '../src/tables/tables.ts';
 import { type Cell, type Row, readTable, TableFault } from './read-table.ts';
 
 const TABLES = [
@@ -66,7 +66,9 @@ function write(root: string): void {
   refuseSharedNames(tables as { solvents: Named[]; reagents: Named[] });
   refuseUnknownTriggers(tables as unknown as TriggeredTables);
   refuseUnknownChoices(tables as unknown as ChosenTables);
-  for (const name of TABLES) tables[name] = folded(tables[name] as Record<string, unknown>[]);
+  const pool: PatternPool = { atoms: [], bonds: [] };
+  for (const name of TABLES) tables[name] = folded(tables[name] as Record<string, unknown>[], pool);
+  tables.patternParts = pool;
   const text = JSON.stringify(tables);
   const version = createHash('sha256').update(text).digest('hex').slice(0, 12);
   mkdirSync(join(root, 'server/generated'), { recursive: true });
@@ -74,9 +76,25 @@ function write(root: string): void {
 }
 
 /** Names each column once: the names alone would make up a fifth of the bundle. */
-function folded(rows: readonly Record<string, unknown>[]): FoldedTable {
+function folded(rows: readonly Record<string, unknown>[], pool: PatternPool): FoldedTable {
   const columns = [...new Set(rows.flatMap((row) => Object.keys(row)))];
-  return { columns, rows: rows.map((row) => columns.map((column) => row[column])) };
+  const cell = (row: Record<string, unknown>, column: string) =>
+    column === 'pattern' && row.pattern != null ? pooled(row.pattern as Pattern, pool) : row[column];
+  return { columns, rows: rows.map((row) => columns.map((column) => cell(row, column))) };
+}
+
+/** A pattern by the places of its parts: a few hundred different ones make up all rules. */
+function pooled({ atoms, bonds }: Pattern, pool: PatternPool): FoldedPattern {
+  return {
+    atoms: atoms.map((atom) => placeIn(pool.atoms, atom)),
+    bonds: bonds.map((bond) => placeIn(pool.bonds, bond)),
+  };
+}
+
+function placeIn<Part>(parts: Part[], part: Part): number {
+  const text = JSON.stringify(part);
+  const place = parts.findIndex((other) => JSON.stringify(other) === text);
+  return place === -1 ? parts.push(part) - 1 : place;
 }
 
 /** Adds what is worked out once, at build: canonical keys, parsed patterns, masses. */

@@ -58,6 +58,18 @@ export interface FoldedTable {
   readonly rows: readonly (readonly unknown[])[];
 }
 
+/** The different parts of all patterns, each written once. */
+export interface PatternPool {
+  readonly atoms: unknown[];
+  readonly bonds: unknown[];
+}
+
+/** A pattern by the places of its parts in the pool. */
+export interface FoldedPattern {
+  readonly atoms: readonly number[];
+  readonly bonds: readonly number[];
+}
+
 export interface Tables extends Built {
   readonly reagentByName: ReadonlyMap<string, ReagentRow>;
   readonly solventByName: ReadonlyMap<string, SolventRow>;
@@ -142,8 +154,11 @@ function indexed(built: Built): Tables {
   };
 }
 
-function unfolded(json: Readonly<Record<string, unknown>>): Built {
-  const tables = Object.entries(json).map(([name, table]) => [name, isFolded(table) ? rowsOf(table) : table]);
+function unfolded({ patternParts, ...json }: Readonly<Record<string, unknown>>): Built {
+  const tables = Object.entries(json).map(([name, table]) => [
+    name,
+    isFolded(table) ? rowsOf(table, patternParts as PatternPool) : table,
+  ]);
   return Object.fromEntries(tables) as Built;
 }
 
@@ -151,10 +166,17 @@ function isFolded(table: unknown): table is FoldedTable {
   return typeof table === 'object' && table !== null && 'columns' in table;
 }
 
-function rowsOf({ columns, rows }: FoldedTable): unknown[] {
+function rowsOf({ columns, rows }: FoldedTable, pool: PatternPool): unknown[] {
   return rows.map((cells) => {
     const row: Record<string, unknown> = {};
-    for (let place = 0; place < columns.length; place++) row[columns[place]!] = cells[place];
+    columns.forEach((column, place) => {
+      const cell = cells[place];
+      row[column] = column === 'pattern' && cell != null ? patternOf(cell as FoldedPattern, pool) : cell;
+    });
     return row;
   });
+}
+
+function patternOf({ atoms, bonds }: FoldedPattern, pool: PatternPool): unknown {
+  return { atoms: atoms.map((place) => pool.atoms[place]), bonds: bonds.map((place) => pool.bonds[place]) };
 }
