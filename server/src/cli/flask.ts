@@ -1,15 +1,13 @@
 /** `lyate flask`: the proton balance of a step, line by line, its titration and its forms over pH. */
 import { type Command, InvalidArgumentError, Option } from 'commander';
-import { createAnalyser } from '../answers/analyse.ts';
 import { type FlaskPlot, type NamedTitration, speciationAt, titrationAt } from '../answers/flask-plots.ts';
 import { flaskStates } from '../answers/flask-states.ts';
 import type { FormCurves } from '../answers/speciation.ts';
 import type { Analysed } from '../answers/types.ts';
 import type { CurvePoint } from '../flask/titration-curve.ts';
+import { createPlanDesk } from '../host/configured.ts';
 import { readText, writeWhole } from '../host/files.ts';
 import { languageOf } from '../host/paths.ts';
-import { analyseWithFiles } from '../host/plans.ts';
-import { builtTables } from '../host/tables.ts';
 import { plainLine } from '../report/plain.ts';
 
 interface FlaskOptions {
@@ -40,7 +38,7 @@ export function addFlask(program: Command): void {
       const { text, problem } = readText(file);
       if (text === undefined) throw new Error(`${file} ${problem}`);
       const source = { file, text, language: languageOf(file) };
-      const analysed = analyseWithFiles(createAnalyser(builtTables()), source);
+      const analysed = createPlanDesk().analyse(source);
       const step = analysed.plan.steps.find(({ label }) => label === options.step);
       if (step === undefined) throw new Error(`${file} has no step ${options.step}`);
       const line = options.line === undefined ? step.firstLine : options.line - 1;

@@ -1,13 +1,11 @@
 /** `lyate suggest`: bases (acids) and solvents that make the intended transfer of a step. */
 import { type Command, InvalidArgumentError, Option } from 'commander';
-import { createAnalyser } from '../answers/analyse.ts';
 import { type Suggestions, suggestionsAt, suggestionsOf } from '../answers/suggest.ts';
 import { pairsRecord, suggestionsRecord } from '../answers/suggest-record.ts';
 import { suggestionsText } from '../answers/suggest-text.ts';
+import { createPlanDesk } from '../host/configured.ts';
 import { readText } from '../host/files.ts';
 import { languageOf } from '../host/paths.ts';
-import { analyseWithFiles } from '../host/plans.ts';
-import { builtTables } from '../host/tables.ts';
 import { plain } from '../report/plain.ts';
 
 interface SuggestOptions {
@@ -34,7 +32,7 @@ export function addSuggest(program: Command): void {
       const { text, problem } = readText(file);
       if (text === undefined) throw new Error(`${file} ${problem}`);
       const source = { file, text, language: languageOf(file) };
-      const analysed = analyseWithFiles(createAnalyser(builtTables()), source);
+      const analysed = createPlanDesk().analyse(source);
       const breadth = options.all ? 'all' : 'ordinary';
       const all = suggestionsOf(analysed, options.step, breadth);
       if (all === null) throw new Error(`${file} has no step ${options.step}`);

@@ -6,17 +6,16 @@
 import { relative, resolve } from 'node:path';
 import { type Analyser, analyseNow } from '../answers/analyse.ts';
 import type { Analysed, SourceText } from '../answers/types.ts';
-import { inside, readText, workspaceOf } from './files.ts';
+import { inside, readText } from './files.ts';
 
 /** How often the analysis may ask for more files; a chain of `use` longer than this is left as it is. */
 const ROUNDS = 64;
 
-/** Analyses one text as if it stood at `file`, with the files that `use` names looked up below the workspace of `file`. */
-export function analyseWithFiles(analyser: Analyser, source: SourceText): Analysed {
-  return analyseIn(workspaceOf(source.file), analyser, source);
-}
-
-/** The same below a given workspace; paths of `use` are relative to it. */
+/**
+ * Analyses one text as if it stood at its file, with the files that `use` names looked up below the workspace.
+ *
+ * Paths of `use` are relative to the workspace.
+ */
 export function analyseIn(
   workspace: string,
   analyser: Analyser,
