@@ -1,5 +1,5 @@
 /** No ionizable heteroatom is left without a rule, over the project's own substances and, where it is at hand, a published collection. */
-import { existsSync, readFileSync } from 'node:fs';
+import { existsSync, readdirSync, readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { parse } from 'csv-parse/sync';
 import { expect, test } from 'vitest';
@@ -14,6 +14,27 @@ test.each(['solvents', 'reagents', 'measured'] as const)('every substance of %s 
     return problem !== null || uncovered.length !== 0;
   });
   expect(left).toEqual([]);
+});
+
+/** Structures of the plans that the project comes with, of everyday practice, and of the checks' fixtures. */
+function writtenStructures(): string[] {
+  const files = ['data/demo', 'tests/practice', 'tests/checks'].flatMap((folder) =>
+    readdirSync(folder)
+      .filter((name) => /\.(lyate|md)$/.test(name))
+      .map((name) => join(folder, name)),
+  );
+  const lines = files.flatMap((name) => readFileSync(name, 'utf8').split('\n'));
+  return [
+    ...new Set(lines.flatMap((line) => /^\s*compound\s+(?:"[^"]*"|\S+)\s*=\s*(\S+)/.exec(line)?.[1] ?? [])),
+  ];
+}
+
+test('every compound of the demonstration, of practice and of the fixtures is covered', () => {
+  const texts = writtenStructures();
+  expect(texts.length).toBeGreaterThan(100);
+  const readable = texts.filter((smiles) => perceive(smiles, tables).problem === null);
+  expect(readable.length).toBeGreaterThan(0.9 * texts.length);
+  expect(readable.filter((smiles) => perceive(smiles, tables).uncovered.length !== 0)).toEqual([]);
 });
 
 test('a measured site carries a couple of the measured kind', () => {

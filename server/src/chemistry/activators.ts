@@ -3,7 +3,8 @@
  *
  * Knows: graphs.  Must not know: values, scales.
  * Invariants: names do not depend on the order of atoms.   (tests/chemistry/activators.test.ts)
- * The names are those of `data/activation.csv`.
+ * The names are those of `data/activation.csv`. One file although long: every name is decided against all others, so
+ * that the list of groups reads as one from top to bottom.
  */
 import { atomKinds, orderBetween, permanentCharge } from './atom-kinds.ts';
 import { coresOf, ringSystems } from './cores.ts';
