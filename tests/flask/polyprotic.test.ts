@@ -22,3 +22,13 @@ test.each([
   for (const [place, value] of expected.entries())
     expect(Math.abs(values[place]! - value)).toBeLessThan(0.06);
 });
+
+test('imidazole has one acid step and one base step in water and in DMSO', () => {
+  const molecule = perceive('c1c[nH]cn1', tables);
+  for (const scale of ['water', 'DMSO'] as const) {
+    const steps = constantsIn(molecule, scale, tables)
+      .steps.flat()
+      .filter(({ couple }) => couple.element === 'N');
+    expect(steps.map(({ couple }) => couple.kind).sort()).toEqual(['acid', 'base']);
+  }
+});

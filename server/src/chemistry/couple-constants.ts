@@ -9,7 +9,7 @@
  *  2. A measured value is returned unchanged on its own scale.
  */
 import type { ScaleId } from '../tables/rows.ts';
-import { chargePull, donationFactor, makesTautomer } from './charges.ts';
+import { basesFactor, chargePull, donationFactor, makesTautomer } from './charges.ts';
 import type { Constant, Couple, OwnValue, Perceived, ProtonStep } from './couple.ts';
 import { type EstimatorTables, estimateInWater } from './estimate.ts';
 import type { Graph } from './graph.ts';
@@ -129,8 +129,6 @@ function overridden(
   const counted = countedSteps(perceived, steps, [...measured, ...own]);
   /** Which measured step each place holds. */
   const settled = perceived.components.map(() => new Map<number, number | null>());
-  /** Which measured step each place holds. */
-  const settled = perceived.components.map(() => new Map<number, number | null>());
   const put = ({ couple: index, step, constant }: MeasuredConstant) => {
     const couple = perceived.couples[index]!;
     const list = result[couple.component]!;
@@ -138,7 +136,7 @@ function overridden(
     const nearest = known?.place ?? nearestPlace(list, couple, constant);
     // A molecule may have more measured steps than the estimate gives its couple: sulfuric acid has one.
     const other = settled[couple.component]!.get(nearest);
-    const place = other === undefined || other === step ? nearest : -1;
+    const place = other == null || step === null || other === step ? nearest : -1;
     settled[couple.component]!.set(place === -1 ? list.length : place, step);
     if (place === -1) list.push({ couple, constant });
     else
@@ -292,7 +290,7 @@ function pull({ couples }: Perceived, graph: Graph, one: Place, other: Place): n
   const alone = chargePull(graph, one.atom, other.atom);
   if (alone === 0) return 0;
   if (one.site.kind === other.site.kind) {
-    return one.site.kind === 'acid' ? alone : alone * donationFactor(graph, one.atom, other.atom);
+    return one.site.kind === 'acid' ? alone : alone * basesFactor(graph, one.atom, other.atom);
   }
   const acid = one.site.kind === 'acid' ? one : other;
   // Two atoms on a third share one proton in either place.
