@@ -61,7 +61,7 @@ describe('the page', () => {
     expect(page).toContain('alt="Ladder of step A. On the water scale:');
     expect(page).toContain('alt="Forms over pH:');
     expect(page).toMatch(/<span class="kind">error<\/span> <code>transfer-uphill<\/code>/);
-    expect(page).toContain('Why it matters, and what to do');
+    expect(page).toMatch(/Why it matters: .*What to do: /);
     expect(page).toContain('Accepted: shown &quot;by&quot; NMR &amp; trusted');
     expect(page.slice(page.indexOf('Cautions'))).toContain('toxic-gas');
     expect(page).toMatch(/<code>[a-z-]+-\d{4}<\/code> <span>[^<]+\d{4}/);

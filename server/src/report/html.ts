@@ -34,11 +34,11 @@ th,td{text-align:left;padding:.25rem .6rem .25rem 0;border-bottom:1px solid var(
 .finding{border-left:4px solid var(--line);padding:.2rem 0 .2rem .9rem;margin:.8rem 0}
 .error{border-color:var(--error)}.warning{border-color:var(--warning)}.information{border-color:var(--information)}
 .finding .kind{font-weight:600}.error .kind{color:var(--error)}.warning .kind{color:var(--warning)}.information .kind{color:var(--information)}
-details summary{cursor:pointer;color:var(--faint)}ul{padding-left:1.2rem}
+.why{font-size:.875rem}ul{padding-left:1.2rem}
 @media print{:root{color-scheme:light;--ink:#000;--faint:#444;--line:#bbb;--ground:#fff;--code:#f6f6f6}
 body{max-width:none;padding:0;font-size:10.5pt}h2{break-before:page}main>section:first-of-type h2{break-before:auto}
 h3,h4{break-after:avoid}figure,.finding,tr,pre{break-inside:avoid}a{color:inherit;text-decoration:none}pre{white-space:pre-wrap}nav{display:none}
-details>*{display:block}@page{margin:18mm 16mm}}
+@page{margin:18mm 16mm}}
 `;
 
 /** The whole page. */
@@ -156,12 +156,11 @@ function findingBlock(finding: ReviewFinding): Markup {
       ? []
       : [
           element(
-            'details',
-            {},
-            leaf('summary', 'Why it matters, and what to do'),
-            leaf('p', page.why),
-            leaf('p', page.remedy),
-            ...(page.sources.length === 0 ? [] : [sourceLine(page.sources)]),
+            'div',
+            { class: 'why faint' },
+            leaf('p', `Why it matters: ${page.why}`),
+            leaf('p', `What to do: ${page.remedy}`),
+            ...(page.sources.length === 0 ? [] : [leaf('p', `Sources: ${page.sources.join(', ')}`)]),
           ),
         ];
   return element(
@@ -297,10 +296,6 @@ function image(svg: string | null, alt: string, caption: string): Markup[] {
   if (svg === null) return [];
   const src = `data:image/svg+xml,${encodeURIComponent(svg)}`;
   return [element('figure', {}, element('img', { src, alt: plain(alt) }), leaf('figcaption', caption))];
-}
-
-function sourceLine(keys: readonly string[]): Markup {
-  return element('p', { class: 'faint' }, { markup: 'Sources: ' }, leaf('span', keys.join(', ')));
 }
 
 function sources({ sources: list }: Review): Markup {
