@@ -24,13 +24,18 @@ const CLOSE = 2;
 
 /** How much stronger an aromatic base acts on a site of the same ring system. */
 export function donationFactor(graph: Graph, first: number, second: number): number {
-  if (isRingNitrogen(graph, first) !== isRingNitrogen(graph, second)) return DONATION_ENDS;
   const near = (site: number) => coresOf(graph, site).filter(({ reach }) => reach <= CLOSE);
   const others = near(second);
   const shared = near(first).some(({ atoms, anchor }) =>
     others.some((other) => atoms.has(other.anchor) && other.atoms.has(anchor)),
   );
   return shared ? DONATION_ENDS : 1;
+}
+
+/** How much stronger two bases push each other where one is part of an aromatic ring: it has no solvent of its own about its charge. */
+export function basesFactor(graph: Graph, first: number, second: number): number {
+  const mixed = isRingNitrogen(graph, first) !== isRingNitrogen(graph, second);
+  return mixed ? DONATION_ENDS : donationFactor(graph, first, second);
 }
 
 function isRingNitrogen(graph: Graph, index: number): boolean {
