@@ -24,7 +24,7 @@ const BATCH = 32;
 const IN_HAND = 3;
 
 /** MB of a worker's heap; a record needs some ten, tables and caches two hundred. */
-const WORKER_MEMORY = 512;
+const WORKER_MEMORY = 320;
 
 /** Answers every record; a bad one gets an error of its own and the run goes on. */
 export async function checkRecords({ jobs, skipDone }: RecordOptions): Promise<number> {
