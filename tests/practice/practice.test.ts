@@ -7,7 +7,7 @@ import { tables } from '../support/tables.ts';
 
 const analyser = createAnalyser(tables);
 
-for (const file of ['sound-1', 'sound-2', 'flawed']) {
+for (const file of ['sound-1', 'sound-2', 'sound-3', 'flawed', 'flawed-2']) {
   const fixtures = readFixtures(readFileSync(new URL(`./${file}.md`, import.meta.url), 'utf8'));
   test.each(fixtures.map((fixture) => [fixture.title, fixture] as const))(`${file}: %s`, (_, fixture) => {
     const { findings } = analyseNow(analyser, {
