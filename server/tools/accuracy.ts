@@ -11,7 +11,7 @@ import { existsSync, readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { parseArgs } from 'node:util';
 import type { ScaleId } from '../src/tables/rows.ts';
-import { readTables, type Tables } from '../src/tables/tables.ts';
+import { readTables } from '../src/tables/tables.ts';
 import { leftOutInDmso } from './activation-fit.ts';
 import { type CalibrationRow, familyFits, readCalibration } from './calibration.ts';
 import { judge, type Reference, type Verdict } from './judge-tables.ts';

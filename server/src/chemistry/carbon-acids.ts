@@ -59,6 +59,9 @@ const RARE_SD = 2;
 /** A group that no molecule of the fit carries counts as its prior says, with this doubt. */
 const UNSEEN_SD = 3;
 
+/** No N–H acid of the fit is as strong; two sulfonyl groups, say, do not add up. */
+const LOWEST_ON_NITROGEN = 0;
+
 interface Prepared {
   readonly models: ReadonlyMap<string, ActivationModel>;
   readonly substituents: Substituents;
@@ -86,6 +89,7 @@ export function estimateNonAqueous(
   if (activators === null || onlyHalogens(activators)) return null;
   if (activators.some(({ name }) => !model.groups.has(name))) return null;
   const constant = describe(activators, model, couple);
+  if (couple.element === 'N' && constant.value < LOWEST_ON_NITROGEN) return null;
   return scale === 'DMSO' ? constant : carry(constant, couple, scale, tables);
 }
 
