@@ -15,6 +15,7 @@ const MAY_IMPORT: Readonly<Record<string, readonly string[]>> = {
   report: ['answers', 'checks', 'route', 'tables'],
   host: ['answers', 'checks', 'route', 'tables'],
   lsp: ['host', 'report', 'answers', 'checks', 'route', 'tables'],
+  library: ['host', 'report', 'answers', 'checks'],
   cli: ['lsp', 'host', 'report', 'answers', 'checks', 'flask', 'route', 'chemistry', 'tables'],
 };
 const PURE = ['tables', 'chemistry', 'flask', 'route', 'checks', 'answers', 'report'];

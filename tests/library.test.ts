@@ -1,7 +1,7 @@
 /** The door for programs: plain data, remembered work, nothing thrown, types that stand by themselves. */
 import { readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
-import * as library from '../server/src/library.ts';
+import * as library from '../server/src/library/library.ts';
 
 const PLAN = `use "shared.lyate"
 step A
@@ -56,7 +56,7 @@ describe('analyse', () => {
 
 describe('the types', () => {
   it('name every value that the library has, and import nothing', () => {
-    const types = readFileSync('server/src/library-types.ts', 'utf8');
+    const types = readFileSync('server/src/library/types.ts', 'utf8');
     const declared = [...types.matchAll(/^export declare function (\w+)/gm)].map(([, name]) => name);
     expect(declared).toEqual(Object.keys(library));
     expect(types).not.toMatch(/^import /m);
@@ -65,7 +65,7 @@ describe('the types', () => {
   });
 
   it('are those of the function', () => {
-    const declared: typeof import('../server/src/library-types.ts').analyse = library.analyse;
+    const declared: typeof import('../server/src/library/types.ts').analyse = library.analyse;
     expect(declared).toBe(library.analyse);
   });
 });

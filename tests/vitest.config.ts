@@ -7,5 +7,6 @@ export default defineConfig({
     exclude: ['tests/editor/**', 'tests/fuzz/long/**'],
     globalSetup: ['tests/support/build.ts'],
     testTimeout: 60_000,
+    hookTimeout: 60_000,
   },
 });

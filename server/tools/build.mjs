@@ -59,7 +59,7 @@ async function bundle(options) {
 }
 
 mkdirSync(at('dist'), { recursive: true });
-copyFileSync(at('server/src/library-types.ts'), at('dist/library.d.ts'));
+copyFileSync(at('server/src/library/types.ts'), at('dist/library.d.ts'));
 await run('make-tables');
 await run('write-registry');
 if (process.argv[2] !== 'tables') {
@@ -80,7 +80,7 @@ if (process.argv[2] !== 'tables') {
     bundle({
       ...browser,
       format: 'esm',
-      entryPoints: ['server/src/library.ts'],
+      entryPoints: ['server/src/library/library.ts'],
       outfile: 'dist/library.js',
     }),
     bundle({ ...node, entryPoints: ['server/src/lsp/node.ts'], outfile: 'dist/server.cjs' }),

@@ -260,5 +260,5 @@ describe('the library', () => {
 
   const BUILD = `require('esbuild').buildSync({bundle:true,platform:'browser',format:'esm',target:'es2022',
     alias:{'jsonc-parser':'jsonc-parser/lib/esm/main.js','csv-parse/sync':'csv-parse/browser/esm/sync'},
-    entryPoints:['server/src/library.ts'],outfile:process.argv[1]})`;
+    entryPoints:['server/src/library/library.ts'],outfile:process.argv[1]})`;
 });

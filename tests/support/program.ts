@@ -1,6 +1,6 @@
 /** The command line as it ships, bundled once for a test file and started as a process of its own. */
 import { spawnSync } from 'node:child_process';
-import { mkdirSync, mkdtempSync, realpathSync, writeFileSync } from 'node:fs';
+import { mkdirSync, mkdtempSync, realpathSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { dirname, join, resolve } from 'node:path';
 import { buildSync } from 'esbuild';
@@ -15,6 +15,7 @@ export interface Ended {
 export function bundleProgram(): string {
   const folder = resolve(`.cache/tests/program-${process.pid}`);
   mkdirSync(folder, { recursive: true });
+  process.once('exit', () => rmSync(folder, { recursive: true, force: true }));
   const entries = { 'lyate.cjs': 'main.ts', 'records-worker.cjs': 'records-worker.ts' };
   for (const [outfile, entry] of Object.entries(entries)) {
     buildSync({

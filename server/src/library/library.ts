@@ -4,14 +4,14 @@
  * Knows: the analysis and the built tables.  Must not know: files, the protocol.
  * Invariant: what is given out is plain data of its own; changing it changes no later answer.   (tests/library.test.ts)
  */
-import { type Analyser, analyseNow, createAnalyser } from './answers/analyse.ts';
-import { flaskStates } from './answers/flask-states.ts';
-import { DEFAULT_SETTINGS, type Settings } from './checks/settings.ts';
-import { builtTables } from './host/tables.ts';
-import type { Analysis, Options } from './library-types.ts';
-import { plainFinding } from './report/json.ts';
+import { type Analyser, analyseNow, createAnalyser } from '../answers/analyse.ts';
+import { flaskStates } from '../answers/flask-states.ts';
+import { DEFAULT_SETTINGS, type Settings } from '../checks/settings.ts';
+import { builtTables } from '../host/tables.ts';
+import { plainFinding } from '../report/json.ts';
+import type { Analysis, Options } from './types.ts';
 
-export type * from './library-types.ts';
+export type * from './types.ts';
 
 const MOST_ANALYSERS = 16;
 const analysers = new Map<string, Analyser>();
