@@ -16,6 +16,7 @@ import budgetReached from './budget-reached.ts';
 import checkFailed from './check-failed.ts';
 import definedTwice from './defined-twice.ts';
 import gasRelease from './gas-release.ts';
+import groupNotStable from './group-not-stable.ts';
 import heatOfNeutralisation from './heat-of-neutralisation.ts';
 import impossibleValence from './impossible-valence.ts';
 import keepContradicts from './keep-contradicts.ts';
@@ -64,6 +65,7 @@ export const CHECKS: readonly Check[] = [
   checkFailed,
   definedTwice,
   gasRelease,
+  groupNotStable,
   heatOfNeutralisation,
   impossibleValence,
   keepContradicts,
