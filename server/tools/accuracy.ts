@@ -18,7 +18,7 @@ import { judge, type Reference, type Verdict } from './judge-tables.ts';
 import { otherValues, ownValues } from './other-values.ts';
 import { moleculeKey, readParents } from './rule-sites.ts';
 import { figures, HEADER, type Met } from './statistics.ts';
-import { fitWater, scaffoldsLeftOut, target } from './water-fit.ts';
+import { fitWater, type Item, novelty, scaffoldsLeftOut, target } from './water-fit.ts';
 
 // A reader that has seen enough, such as `head`, closes the pipe.
 process.stdout.on('error', (error: NodeJS.ErrnoException) => {
@@ -90,14 +90,16 @@ function reportUnseen(path: string): void {
   const solved = fitWater(path, join(root, 'data'));
   const weight = tables.spreads.find(({ name }) => name === 'novelty')?.value ?? 1;
   const floor = new Map(tables.spreads.map(({ name, value }) => [name, value]));
-  const unseen = scaffoldsLeftOut(solved).map(({ item, error, novelty }) => {
+  const met = (item: Item, error: number, doubt: number) => {
     const { kind, family } = item.chosen.site;
-    const sd = Math.sqrt((floor.get(`${kind[0]}.${family}`) ?? 1) ** 2 + weight * novelty);
+    const sd = Math.sqrt((floor.get(`${kind[0]}.${family}`) ?? 1) ** 2 + weight * doubt);
     return { family, error, sd };
+  };
+  const unseen = scaffoldsLeftOut(solved).map(({ item, error, novelty }) => met(item, error, novelty));
+  const single = solved.used.flatMap((item, k) => {
+    const error = target(item) - solved.fit.leftOut[k]!;
+    return item.row?.singleSite ? [met(item, error, novelty(item.chosen, solved.counts, 1))] : [];
   });
-  const single = solved.used.flatMap((item, k) =>
-    item.row?.singleSite ? [{ error: target(item) - solved.fit.leftOut[k]!, sd: Number.NaN }] : [],
-  );
   print('', 'Water, left out of the fit, estimate only', HEADER);
   print(figures('molecules one by one', single), figures('whole scaffolds', unseen));
   print(
