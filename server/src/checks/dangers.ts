@@ -75,8 +75,7 @@ function dangerAt(row: CautionRow, facts: StepFacts, place: number): Danger | nu
 /** By the proton balance: how much of the group stands in its dangerous form beyond what was charged so. */
 function dangerOfGroup(row: CautionRow, moment: Moment, range: Range): Danger | null {
   const { ingredients } = moment.contents;
-  if (!ingredients.some(({ molecule }) => molecule?.couples.some(({ group }) => group === row.group)))
-    return null;
+  if (!ingredients.some((one) => mayHold(one, row))) return null;
   const { couples, gases, medium } = moment.state();
   // A solid carbonate in a dry solvent takes one proton at its surface and stays hydrogen carbonate.
   const dry = !medium.protic && medium.organic === null;
@@ -99,6 +98,12 @@ function dangerOfGroup(row: CautionRow, moment: Moment, range: Range): Danger | 
   const share = amount === 0 ? 0 : mol / amount;
   if (share < 10 ** -(row.gasMargin ?? 1) || mol <= sum((one) => one.amount * one.charged)) return null;
   return { row, range, share, mol, pH: acidity(moment) };
+}
+
+/** Whether it is worth solving the flask for the group; complex hydrides act by their class, not by a couple drawn. */
+function mayHold({ molecule, reagent }: Ingredient, { group, gas }: CautionRow): boolean {
+  if (molecule?.couples.some((couple) => couple.group === group)) return true;
+  return gas === HYDROGEN && (reagent?.roles.some((role) => role.endsWith('hydride')) ?? false);
 }
 
 /** Of each ingredient the step that completes the form which leaves: its strongest acid. */
