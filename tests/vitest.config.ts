@@ -8,5 +8,7 @@ export default defineConfig({
     globalSetup: ['tests/support/build.ts'],
     testTimeout: 60_000,
     hookTimeout: 60_000,
+    reporters: ['default', 'json'],
+    outputFile: { json: '.cache/tests.json' },
   },
 });

@@ -2,7 +2,7 @@
 import { readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { startWorkbench, type Workbench } from './workbench.ts';
+import { boxOf, startWorkbench, type Workbench } from './workbench.ts';
 
 const MISTAKE = `plan "Two mistakes"
 
@@ -77,12 +77,10 @@ describe('chemistry', () => {
     const squiggle = workbench.squiggles('error').first();
     // The first findings wait for the workbench to wake its extensions.
     await squiggle.waitFor({ timeout: 140_000 });
-    const box = (await squiggle.boundingBox())!;
-    const site = (await workbench.page
-      .locator('.view-line', { hasText: 'deprotonate' })
-      .getByText(':1')
-      .first()
-      .boundingBox())!;
+    const box = await boxOf(squiggle);
+    const site = await boxOf(
+      workbench.page.locator('.view-line', { hasText: 'deprotonate' }).getByText(':1').first(),
+    );
     expect(Math.abs(box.x - site.x)).toBeLessThan(3);
     await workbench.page.mouse.move(box.x + box.width / 2, box.y + 2);
     const text = await hoverText();
@@ -112,8 +110,8 @@ describe('findings', () => {
     await workbench.openFile('mistake.lyate');
     const squiggle = workbench.squiggles('error').first();
     await squiggle.waitFor();
-    const box = (await squiggle.boundingBox())!;
-    const word = (await workbench.page.getByText('LDDA', { exact: true }).first().boundingBox())!;
+    const box = await boxOf(squiggle);
+    const word = await boxOf(workbench.page.getByText('LDDA', { exact: true }).first());
     expect(Math.abs(box.x - word.x)).toBeLessThan(3);
     expect(Math.abs(box.width - word.width)).toBeLessThan(6);
     await workbench.page.mouse.move(box.x + box.width / 2, box.y + 2);

@@ -1,6 +1,7 @@
 /** The same extension in a browser without any process behind it. */
 import { afterAll, beforeAll, expect, it } from 'vitest';
 import { startWebWorkbench, type WebWorkbench } from './web-workbench.ts';
+import { boxOf } from './workbench.ts';
 
 const PLAN = `use "shared.lyate"
 
@@ -27,7 +28,7 @@ it('a plan in memory is checked by a worker, with the file it uses', async () =>
   const squiggle = page.locator('.editor-instance .squiggly-error').first();
   await squiggle.waitFor({ timeout: 120_000 });
   expect(await page.locator('.editor-instance .squiggly-error').count()).toBe(1);
-  const box = (await squiggle.boundingBox())!;
+  const box = await boxOf(squiggle);
   await page.mouse.move(box.x + box.width / 2, box.y + 2);
   const hover = page.locator('.monaco-hover:not(.hidden)', { hasText: 'transfer-uphill' });
   await hover.first().waitFor();

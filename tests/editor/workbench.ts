@@ -153,6 +153,18 @@ function driver(page: Page, browser: Browser, server: ChildProcess, folder: stri
   };
 }
 
+/** Where something stands, waited for: the editor may just be drawing its line anew. */
+export async function boxOf(
+  locator: Locator,
+): Promise<{ x: number; y: number; width: number; height: number }> {
+  for (let attempt = 0; attempt < 50; attempt++) {
+    const box = await locator.boundingBox();
+    if (box !== null) return box;
+    await new Promise((later) => setTimeout(later, 100));
+  }
+  throw new Error('it is never drawn');
+}
+
 async function ready(page: Page): Promise<void> {
   await page
     .locator('.monaco-workbench .part.statusbar .statusbar-item')
