@@ -2,7 +2,8 @@
 import { describe, expect, it } from 'vitest';
 import { TextDocument } from 'vscode-languageserver-textdocument';
 import { analyseNow, createAnalyser } from '../../server/src/answers/analyse.ts';
-import { type Fix, fixesFor } from '../../server/src/answers/fixes.ts';
+import type { Fix } from '../../server/src/answers/fix.ts';
+import { fixesFor } from '../../server/src/answers/fixes.ts';
 import { builtTables } from '../../server/src/host/tables.ts';
 
 const analyser = createAnalyser(builtTables());
@@ -40,7 +41,28 @@ step B
   base NaOH 1.1 equiv
   deprotonate ketone`;
 
+const SHORT = `compound acid = O=C([OH:1])c1ccccc1
+step A
+  solvent water 20 mL
+  charge acid 10 mmol
+  base NaOH 0.5 equiv
+  deprotonate acid at :1`;
+
 describe('fixes', () => {
+  it('top a short base up to what the sites take', () => {
+    const fix = allFixes(SHORT).find(({ finding }) => finding.check === 'base-short');
+    expect(fix?.title).toBe('Write 1.05 equiv');
+    expect(checksOf(apply(SHORT, fix!))).not.toContain('base-short');
+  });
+
+  it('offer other bases and solvents for a transfer that does not go, none of them as safe', () => {
+    const fixes = allFixes(BROKEN).filter(
+      ({ finding, title }) => finding.check === 'transfer-uphill' && title.startsWith('Take'),
+    );
+    expect(fixes.length).toBeGreaterThan(0);
+    expect(fixes.every(({ safe }) => !safe)).toBe(true);
+  });
+
   it('take away the finding they are offered for', () => {
     const fixes = allFixes(BROKEN);
     expect(fixes.length).toBeGreaterThan(6);

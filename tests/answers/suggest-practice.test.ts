@@ -2,7 +2,7 @@
 import { readFileSync } from 'node:fs';
 import { expect, test } from 'vitest';
 import { analyseNow, createAnalyser } from '../../server/src/answers/analyse.ts';
-import type { Edit } from '../../server/src/answers/fixes.ts';
+import type { Edit } from '../../server/src/answers/fix.ts';
 import { suggestionsAt } from '../../server/src/answers/suggest.ts';
 import { readFixtures } from '../support/fixtures.ts';
 import { tables } from '../support/tables.ts';

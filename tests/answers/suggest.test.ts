@@ -1,7 +1,7 @@
 /** Suggestions in their steps: the edited text reads as promised and raises no new error. */
 import { expect, test } from 'vitest';
 import { analyseNow, createAnalyser } from '../../server/src/answers/analyse.ts';
-import type { Edit } from '../../server/src/answers/fixes.ts';
+import type { Edit } from '../../server/src/answers/fix.ts';
 import { suggestionsAt, suggestionsOf } from '../../server/src/answers/suggest.ts';
 import { suggestedFixes } from '../../server/src/answers/suggest-fixes.ts';
 import { pairsRecord, suggestionsRecord } from '../../server/src/answers/suggest-record.ts';

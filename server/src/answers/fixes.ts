@@ -10,32 +10,19 @@ import { lineAt, type RouteDocument } from '../route/document.ts';
 import { KEYWORDS } from '../route/parse.ts';
 import type { Range } from '../route/plan.ts';
 import { editDistance, nearestNames } from '../tables/names.ts';
+import type { Fix } from './fix.ts';
 import { inLine } from './ranges.ts';
 import { written } from './rename.ts';
 import { repairs } from './smiles-repair.ts';
+import { suggestedFixes } from './suggest-fixes.ts';
 import type { Analysed } from './types.ts';
-
-export interface Edit {
-  readonly range: Range;
-  readonly text: string;
-}
-
-export interface Fix {
-  readonly title: string;
-  readonly finding: Finding;
-  readonly edits: readonly Edit[];
-  /** May be applied without a look: nothing but the mistake changes. */
-  readonly safe: boolean;
-  /** The one to take where there is only one sensible. */
-  readonly preferred: boolean;
-}
 
 /** Fixes for one finding, best first. */
 export function fixesFor(analysed: Analysed, finding: Finding): Fix[] {
   if (finding.accepted) return [];
   const make = FIXES[finding.check];
   const own = make === undefined ? [] : make(analysed, finding);
-  return [...own, ...acceptance(analysed, finding)];
+  return [...own, ...suggestedFixes(analysed, finding), ...acceptance(analysed, finding)];
 }
 
 type Maker = (analysed: Analysed, finding: Finding) => Fix[];
@@ -45,6 +32,8 @@ const FIXES: Readonly<Record<string, Maker>> = {
   'unreadable-line': keywordSpelling,
   'unreadable-structure': structureRepair,
   'missing-amount': oneEquivalent,
+  'base-short': enough,
+  'acid-short': enough,
   'accept-without-effect': withoutLine('Take this line out', true),
   'unused-compound': withoutLine('Take the compound out', false),
 };
@@ -129,6 +118,29 @@ function oneEquivalent(analysed: Analysed, finding: Finding): Fix[] {
       edits: [{ range: at, text: ' 1 equiv' }],
       safe: false,
       preferred: false,
+    },
+  ];
+}
+
+/** Equivalents that a base or an acid that falls short is topped up to, with a margin. */
+const MARGIN = 1.05;
+
+/** As many equivalents as cover the sites, where the amount is written as equivalents. */
+function enough(analysed: Analysed, finding: Finding): Fix[] {
+  const covered = finding.figures.equivalents ?? null;
+  const text = textAt(analysed, finding.range);
+  const now = /^\d+(?:\.\d+)?(?= equiv)/.exec(text)?.[0];
+  if (covered === null || covered <= 0 || now === undefined) return [];
+  const wanted = String(Number(((Number(now) / covered) * MARGIN).toFixed(2)));
+  const { start } = finding.range;
+  const range = { start, end: { ...start, character: start.character + now.length } };
+  return [
+    {
+      title: `Write ${wanted} equiv`,
+      finding,
+      edits: [{ range, text: wanted }],
+      safe: false,
+      preferred: true,
     },
   ];
 }

@@ -15,7 +15,7 @@ import type {
   Substance,
   TransferStatement,
 } from '../route/plan.ts';
-import type { Edit } from './fixes.ts';
+import type { Edit } from './fix.ts';
 import { inLine, shiftRange } from './ranges.ts';
 import type { Analysed } from './types.ts';
 

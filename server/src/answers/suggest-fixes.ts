@@ -5,7 +5,7 @@
  * Invariant: none is safe to apply without a look.   (tests/answers/suggest.test.ts)
  */
 import type { Finding } from '../checks/finding.ts';
-import type { Fix } from './fixes.ts';
+import type { Fix } from './fix.ts';
 import { suggestionsAt } from './suggest.ts';
 import type { Analysed } from './types.ts';
 

@@ -15,7 +15,7 @@ import type { Ingredient, Site, Verdict } from '../flask/state.ts';
 import { type Option, type Reason, type Rejection, screen } from '../flask/suggest.ts';
 import type { Step } from '../route/plan.ts';
 import type { ReagentRow, SolventRow } from '../tables/rows.ts';
-import type { Edit } from './fixes.ts';
+import type { Edit } from './fix.ts';
 import { stepAt } from './steps.ts';
 import { editsFor, type Swap } from './suggest-edits.ts';
 import { createTrial, type Remark, type Trial } from './suggest-trial.ts';

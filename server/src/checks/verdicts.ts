@@ -208,7 +208,7 @@ export function* reportShort(facts: StepFacts, keyword: TransferStatement['keywo
       message: `${verdict.capacity.toFixed(2)} equiv of ${role} for one equiv of the ${nameOf(facts, verdict.site)}: ${Math.round(100 * (1 - verdict.capacity))} % of it stays as it is.`,
       // What the transfer itself leaves open is not the amount's fault.
       confidence: 1 - verdict.probability,
-      figures: figuresOf(verdict),
+      figures: { ...figuresOf(verdict), equivalents: verdict.capacity },
     };
   }
 }

@@ -19,7 +19,7 @@ import {
   SymbolKind,
 } from 'vscode-languageserver';
 import type { Choice, ChoiceKind } from '../answers/completion.ts';
-import type { Fix } from '../answers/fixes.ts';
+import type { Fix } from '../answers/fix.ts';
 import type { Fold } from '../answers/folding.ts';
 import type { Hint } from '../answers/hints.ts';
 import type { PlanSymbol } from '../answers/symbols.ts';

@@ -1,6 +1,7 @@
 /** Fixes for the findings at a place, and all safe ones of a plan at once. */
 import { type CodeAction, CodeActionKind } from 'vscode-languageserver';
-import { type Edit, fixesFor } from '../../answers/fixes.ts';
+import type { Edit } from '../../answers/fix.ts';
+import { fixesFor } from '../../answers/fixes.ts';
 import { overlap } from '../../answers/ranges.ts';
 import { uriOf } from '../places.ts';
 import type { Result } from '../plans.ts';
