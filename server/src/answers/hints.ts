@@ -3,7 +3,7 @@
  *
  * Knows: analysed plans.  Must not know: the protocol, what the user wants to see.
  */
-import type { Moment, TransferFact } from '../checks/facts.ts';
+import type { AdjustFact, StepFacts, TransferFact } from '../checks/facts.ts';
 import { lineAt } from '../route/document.ts';
 import type { Range, Statement } from '../route/plan.ts';
 import type { LineTree } from '../route/tree.ts';
@@ -37,7 +37,7 @@ export function hintsIn(
       if (line < first || last < line) continue;
       if (kinds.has('amounts')) hints.push(...amountHint(statement, lineAt(plan.document, line)));
       if (kinds.has('transfers')) hints.push(...transferHint(statement, facts.transfers));
-      if (kinds.has('pH')) hints.push(...pHHint(statement, facts.moments));
+      if (kinds.has('pH')) hints.push(...pHHint(statement, facts));
     }
     return hints.map((hint) => ({ ...hint, behind: shiftRange(hint.behind, firstLine) }));
   });
@@ -73,7 +73,7 @@ function transferHint(statement: Statement, transfers: readonly TransferFact[]):
   ];
 }
 
-function pHHint(statement: Statement, moments: readonly Moment[]): Hint[] {
+function pHHint(statement: Statement, { moments, adjustments }: StepFacts): Hint[] {
   if (statement.keyword !== 'quench' && statement.keyword !== 'adjust') return [];
   const moment = moments.find((each) => each.statement === statement);
   const state = moment?.state();
@@ -82,8 +82,16 @@ function pHHint(statement: Statement, moments: readonly Moment[]): Hint[] {
     {
       kind: 'pH',
       behind: statement.range,
-      text: `pH ${oneDecimal(state.pH)}`,
+      text: `pH ${oneDecimal(state.pH)}${needed(adjustments.find((each) => each.statement === statement))}`,
       tooltip: 'pH of the aqueous phase once the protons have come to rest.',
     },
   ];
+}
+
+/** " with 12 mmol, 2.4 mL": what brings the flask to the pH that is asked for. */
+function needed(fact: AdjustFact | undefined): string {
+  const mol = fact?.titration.mol ?? null;
+  if (fact === undefined || mol === null || mol <= 0) return '';
+  const volume = fact.volume === null ? '' : `, ${figure(1000 * fact.volume)} mL`;
+  return ` with ${amountOf(mol)}${volume}`;
 }

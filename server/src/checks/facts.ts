@@ -60,6 +60,8 @@ export interface ConvertFact {
 export interface AdjustFact {
   readonly statement: AdjustStatement;
   readonly titration: Titration;
+  /** L of the reagent at the strength that is written; null where none is. */
+  readonly volume: number | null;
 }
 
 export interface StepFacts {

@@ -13,7 +13,7 @@ import { type Intent, judgeTransfer } from '../flask/judge.ts';
 import { ingredientsIn, type Layer } from '../flask/separate.ts';
 import { solveFlask } from '../flask/solve.ts';
 import type { Contents, FlaskState, Ingredient, Role, Verdict } from '../flask/state.ts';
-import { titrateTo } from '../flask/titrate.ts';
+import { type Titration, titrateTo } from '../flask/titrate.ts';
 import type {
   AddStatement,
   AdjustStatement,
@@ -32,6 +32,8 @@ import type { Settings } from './settings.ts';
 
 const ROOM = 298.15;
 const ZERO_CELSIUS = 273.15;
+/** Rounds in which the volume of what is added to a pH settles. */
+const DILUTIONS = 3;
 /** A line without any amount in a flask without any: 1 mmol. */
 const FALLBACK_MOL = 1e-3;
 
@@ -286,24 +288,33 @@ class Filling {
   /** Adds as much as the pH asks for; what cannot be reached adds nothing. */
   private adjust(statement: AdjustStatement): void {
     const { substance, amount, pH } = statement;
-    this.add(statement, substance, amount, 'quench');
-    const added = this.ingredients.find(
-      ({ name, role }) =>
-        name === substance.name &&
-        role === 'quench' &&
-        this.additions.some((one) => one.statement === statement && one.ingredient.name === name),
-    );
-    if (added === undefined) return;
-    const others = this.ingredients.filter((one) => one !== added);
-    const titration = titrateTo(
-      { ...this.contents(), ingredients: others },
-      pH,
-      added,
-      this.tables,
-      constantsIn,
-    );
-    this.adjustments.push({ statement, titration });
-    this.ingredients = titration.mol === null ? others : [...others, { ...added, mol: titration.mol }];
+    const before = this.ingredients;
+    this.put(statement, substance, { role: 'quench', mol: amount.mol ?? FALLBACK_MOL, volume: null, amount });
+    const added = this.ingredients.at(-1)!;
+    const known = this.additions.length;
+    let others = before;
+    let volume: number | null = null;
+    let titration = this.titrate(others, added, pH);
+    // The liquid that the reagent brings dilutes the flask, so its amount is worked out again with it.
+    for (let turn = 0; turn < DILUTIONS && titration.mol !== null && 0 < titration.mol; turn++) {
+      const each = amount.mol === null || amount.mol <= 0 ? null : titration.mol / amount.mol;
+      if (each === null || amount.volume === null) break;
+      volume = amount.volume * each;
+      this.ingredients = [...before];
+      this.additions.length = known;
+      for (const { solvent, volume: carried } of amount.carriers)
+        if (carried !== null)
+          this.put(statement, solvent, { role: 'solvent', mol: 0, volume: carried * each, amount });
+      others = this.ingredients;
+      titration = this.titrate(others, added, pH);
+    }
+    this.adjustments.push({ statement, titration, volume });
+    const { mol } = titration;
+    this.ingredients = mol === null ? [...before] : [...others, { ...added, mol, volume }];
+  }
+
+  private titrate(others: readonly Ingredient[], added: Ingredient, pH: number): Titration {
+    return titrateTo({ ...this.contents(), ingredients: others }, pH, added, this.tables, constantsIn);
   }
 
   /** The next conversion of the step that uses up what the transfer makes. */

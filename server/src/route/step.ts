@@ -196,10 +196,8 @@ function addedAmount(each: Draft, syntax: Addition, basis: Basis, scope: Scope, 
   if (syntax.keyword === 'inert' && written.quantities.length === 0) {
     return { ...dose, mol: null, equiv: null, mass: null, range };
   }
-  if (syntax.keyword === 'adjust') {
-    const carriers = dose.carriers.map(({ solvent }) => ({ solvent, volume: null }));
-    return { ...dose, mol: null, equiv: null, mass: null, volume: null, carriers, range };
-  }
+  // How much is worked out from the pH; amount and volume stand for the strength alone.
+  if (syntax.keyword === 'adjust') return { ...dose, equiv: null, mass: null, assumed: true, range };
   if (stuck && substance.kind !== 'unknown' && syntax.keyword === 'charge' && written.carriers.length === 0) {
     reportMissing(
       `The amount of ${substance.name} in mol cannot be worked out from this; write mmol or equiv.`,
