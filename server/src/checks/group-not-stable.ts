@@ -40,22 +40,61 @@ step A
   convert A to B
 `,
   *inStep(facts) {
-    for (const fact of facts.conversions) {
-      for (const { substance } of fact.statement.to) {
-        const fault = faultOf(fact, substance, facts);
-        if (fault === null) continue;
-        const { row, attacker } = fault;
-        const reagent = facts.additions.find(({ ingredient }) => ingredient.id === attacker?.id);
-        yield {
-          range: substance.range,
-          message: `The ${row.name} of ${substance.name} is meant to stay, but ${fault.words}: the trade holds it safe ${safeRange(row)}.`,
-          related:
-            reagent === undefined ? [] : [{ range: reagent.range, message: `what attacks the ${row.name}` }],
-        };
-      }
+    for (const { substance, fault } of [...afterConversions(facts), ...heldThrough(facts)]) {
+      const { row, attacker } = fault;
+      const reagent = facts.additions.find(({ ingredient }) => ingredient.id === attacker?.id);
+      yield {
+        range: substance.range,
+        message: `The ${row.name} of ${substance.name} is meant to stay, but ${fault.words}: the trade holds it safe ${safeRange(row)}.`,
+        related:
+          reagent === undefined ? [] : [{ range: reagent.range, message: `what attacks the ${row.name}` }],
+      };
     }
   },
 });
+
+interface Blamed {
+  readonly substance: Substance;
+  readonly fault: Fault;
+}
+
+/** Products that hold as many of a group as their reactants did. */
+function afterConversions(facts: StepFacts): Blamed[] {
+  return facts.conversions.flatMap((fact) =>
+    fact.statement.to.flatMap(({ substance }) => {
+      const fault = faultOf(fact, substance, facts);
+      return fault === null ? [] : [{ substance, fault }];
+    }),
+  );
+}
+
+/** Compounds that no conversion touches and that a later line wants back as they are, the first such line of each. */
+function heldThrough({ step, moments, conversions, tables }: StepFacts): Blamed[] {
+  const isTouched = (name: string) =>
+    conversions.some(({ statement }) =>
+      [...statement.from, ...statement.to].some(({ substance }) => substance.name === name),
+    );
+  const last = moments.filter(({ statement }) => !WORK_UP.has(statement.keyword)).at(-1);
+  const said = new Set<string>();
+  return step.statements.flatMap((statement): Blamed[] => {
+    if (!WANTING_BACK.has(statement.keyword) || !('substance' in statement) || last === undefined) return [];
+    const { substance } = statement;
+    const one = moleculeIn(last.contents.ingredients, substance);
+    if (one === undefined || isTouched(one.name) || said.has(one.name)) return [];
+    said.add(one.name);
+    for (const row of tables.stability) {
+      if (countIn(one, row) === 0) continue;
+      const attacker = attackerOf(row, last.contents, one.mol, tables);
+      if (attacker !== null)
+        return [{ substance, fault: { row, attacker, words: `${attacker.name} takes it off` } }];
+    }
+    return [];
+  });
+}
+
+/** Lines of the work-up, whose contacts are short. */
+const WORK_UP = new Set(['quench', 'wash', 'extract', 'adjust', 'keep', 'isolate']);
+const WANTING_BACK = new Set(['extract', 'keep', 'isolate']);
 
 interface Fault {
   readonly row: StabilityRow;
