@@ -59,6 +59,19 @@ describe('a picture', () => {
     expect(arrow!.logK).toBeGreaterThan(5);
   });
 
+  it('points to the step of a base that acts, not to its first', () => {
+    const text = `compound salt = Cl.CN(C)CCOc1ccccc1
+step A
+  solvent water 60 mL
+  charge salt 30 mmol
+  base K2CO3 1.5 equiv
+  deprotonate salt
+`;
+    const plan = analyseNow(createAnalyser(builtTables()), { file: 'x.lyate', text, language: 'lyate' });
+    const { arrows, rungs } = flaskPictureAt(plan, 5) as FlaskPicture;
+    expect(rungs.find(({ id }) => id === arrows[0]!.to)?.pKa).toBeCloseTo(10.3, 0);
+  });
+
   it('puts the solvents of the flask first', () => {
     expect(at(5).solvents[0]).toMatchObject({ solvent: 'water', inFlask: true, low: 0 });
     expect(at(5).solvents.length).toBeGreaterThan(5);

@@ -166,12 +166,21 @@ function arrow(
   return [{ from: from.id, to: to.id, answer, logK, sd, extent }];
 }
 
+/** The rung of a site; of a couple with several steps the one whose constant is nearest. */
 function find(site: Site, couples: readonly CoupleState[], rungs: readonly Rung[]): Rung | undefined {
-  const same = (state: CoupleState) =>
-    state.ingredient === site.ingredient &&
-    state.couple.atom === site.couple.atom &&
-    state.couple.group === site.couple.group;
-  return rungs[couples.findIndex(same)];
+  let best = -1;
+  couples.forEach((state, place) => {
+    const isSame =
+      state.ingredient === site.ingredient &&
+      state.couple.atom === site.couple.atom &&
+      state.couple.group === site.couple.group;
+    if (isSame && (best === -1 || off(state, site) < off(couples[best]!, site))) best = place;
+  });
+  return rungs[best];
+}
+
+function off(state: CoupleState, site: Site): number {
+  return Math.abs(state.constant.value - site.constant.value);
 }
 
 function windowOf(solvent: SolventRow | null): FlaskPicture['window'] {
