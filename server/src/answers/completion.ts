@@ -6,6 +6,7 @@
  */
 import { CHECKS } from '../checks/registry.generated.ts';
 import { readSmiles } from '../chemistry/smiles.ts';
+import { ACTING_ROLES } from '../flask/choices.ts';
 import { fenceIndents } from '../route/markdown.ts';
 import type { Position, Range } from '../route/plan.ts';
 import { scanLine, stringText, type Token } from '../route/scan.ts';
@@ -50,17 +51,8 @@ interface Place {
   readonly start: number;
 }
 
-const BASE_ROLES: ReadonlySet<ReagentRole> = new Set([
-  'metal-hydride',
-  'metal-amide',
-  'organometallic',
-  'solid-base',
-  'amine-base',
-  'alkoxide',
-  'hydroxide',
-  'carbonate',
-]);
-const ACID_ROLES: ReadonlySet<ReagentRole> = new Set(['mineral-acid', 'organic-acid', 'lewis-acid']);
+const BASE_ROLES = ACTING_ROLES.base;
+const ACID_ROLES: ReadonlySet<ReagentRole> = new Set([...ACTING_ROLES.acid, 'lewis-acid']);
 const INERT_ROLES: ReadonlySet<ReagentRole> = new Set(['catalyst', 'ligand', 'drying-agent', 'additive']);
 
 /** Choices at a place; empty inside remarks, quotes and structures, and outside the fences of a page. */

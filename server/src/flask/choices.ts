@@ -7,7 +7,7 @@
  */
 import { matchSites } from '../chemistry/match.ts';
 import type { Pattern } from '../chemistry/smarts.ts';
-import type { ChoiceRow, ReagentRow, SolventRow, StabilityRow } from '../tables/rows.ts';
+import type { ChoiceRow, ReagentRole, ReagentRow, SolventRow, StabilityRow } from '../tables/rows.ts';
 import type { Tables } from '../tables/tables.ts';
 import type { Ingredient } from './state.ts';
 
@@ -28,7 +28,8 @@ export interface Attacked {
   readonly group: string;
 }
 
-const ACTING_ROLES = {
+/** Roles of reagents that are charged to take (give) a proton. */
+export const ACTING_ROLES: Readonly<Record<'base' | 'acid', ReadonlySet<ReagentRole>>> = {
   base: new Set([
     'metal-hydride',
     'metal-amide',
@@ -40,7 +41,7 @@ const ACTING_ROLES = {
     'carbonate',
   ]),
   acid: new Set(['mineral-acid', 'organic-acid']),
-} as const;
+};
 
 /** Every reagent of the tables that counts as a base (an acid), in the order of the table. */
 export function choicesAs(as: 'base' | 'acid', { reagents, choices }: Tables): Choice[] {

@@ -14,6 +14,8 @@ import type { Site } from './state.ts';
 const ACTING_SHARE = 0.05;
 /** The same for one that was charged as such; less forms by itself in any salt. */
 const CATALYTIC_SHARE = 1e-3;
+/** The same for the solvent's own ion: a weak base sets a few per cent of it free and still acts itself. */
+const LEVELLED_SHARE = 0.3;
 /** Bases this much weaker than the acting one do not count as capacity. */
 const CAPACITY_SPAN = 4;
 /** mol/L of a solvent's own ion that cannot come from its autoprotolysis. */
@@ -62,7 +64,7 @@ export function partnerOf(candidates: readonly Candidate[], amount: number, lose
   const acting =
     dissolved.find(
       ({ able, charged, isSolvent }) =>
-        (isSolvent || charged === 0 ? ACTING_SHARE : CATALYTIC_SHARE) * amount <= able,
+        (isSolvent ? LEVELLED_SHARE : charged === 0 ? ACTING_SHARE : CATALYTIC_SHARE) * amount <= able,
     ) ??
     dissolved.find(({ able }) => CATALYTIC_SHARE * amount <= able) ??
     byStrength.find(({ able }) => ACTING_SHARE * amount <= able);
