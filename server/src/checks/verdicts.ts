@@ -62,6 +62,9 @@ function kindOf(
   if (isSpentOnSolvent(facts, verdict)) return { kind: 'fine', ahead: none };
   if (verdict.kinetics !== 'instant' && verdict.allowances.includes('slow'))
     return { kind: 'slow', ahead: none };
+  // All that is left to act is the ion of an equal site: what was charged reaches no further.
+  if (isTwin(verdict) && !isCatalytic(fact, verdict))
+    return { kind: coveredBy(fact, verdict) < COVERED ? 'short' : 'fine', ahead: none };
   const spent = spentOn(fact, verdict);
   if (spent !== null) return { kind: 'other-site', ahead: [spent] };
   const ahead = sitesAhead(facts, fact, verdict);
@@ -100,6 +103,16 @@ function spentOn(
     (other) => other.role === role && other.id !== partner.ingredient,
   );
   return one?.role === 'compound' && hasOther ? partner : null;
+}
+
+/** Whether what acts is an equal site of the same molecule. */
+function isTwin({ partner, site }: Verdict): boolean {
+  return (
+    partner !== null &&
+    partner.ingredient === site.ingredient &&
+    partner.couple.kind === site.couple.kind &&
+    partner.couple.equivalents.includes(site.couple.atom)
+  );
 }
 
 function isCatalytic({ convert }: TransferFact, { capacity, allowances }: Verdict): boolean {
@@ -202,13 +215,26 @@ export function* reportShort(facts: StepFacts, keyword: TransferStatement['keywo
       id === fact.ingredient?.id ? ingredient.role === role : ingredient.id === id,
     );
     const statement = acting?.statement;
+    const capacity = coveredBy(fact, verdict);
     const amount = statement != null && 'amount' in statement ? statement.amount.range : null;
     yield {
       range: amount ?? acting?.range ?? fact.statement.range,
-      message: `${verdict.capacity.toFixed(2)} equiv of ${role} for one equiv of the ${nameOf(facts, verdict.site)}: ${Math.round(100 * (1 - verdict.capacity))} % of it stays as it is.`,
+      message: `${capacity.toFixed(2)} equiv of ${role} for one equiv of the ${nameOf(facts, verdict.site)}: ${Math.round(100 * (1 - capacity))} % of it stays as it is.`,
       // What the transfer itself leaves open is not the amount's fault.
       confidence: 1 - verdict.probability,
-      figures: { ...figuresOf(verdict), equivalents: verdict.capacity },
+      figures: { ...figuresOf(verdict), equivalents: capacity },
     };
   }
+}
+
+/** Equivalents of base (acid) for each site that the writer named; among equal sites by what was charged. */
+function coveredBy({ contents, statement, ingredient }: TransferFact, verdict: Verdict): number {
+  if (!isTwin(verdict) || ingredient === null) return verdict.capacity;
+  const role = statement.keyword === 'deprotonate' ? 'base' : 'acid';
+  const named = statement.sites.reduce((sum, { atoms }) => sum + atoms.length, 0);
+  const sites = ingredient.mol * (named === 0 ? verdict.site.couple.equivalents.length : named);
+  const able = contents.ingredients
+    .filter((one) => one.role === role)
+    .reduce((sum, { mol, reagent }) => sum + mol * (reagent?.protonCapacity ?? 1), 0);
+  return able / sites;
 }
