@@ -8,6 +8,8 @@ export default defineConfig({
     fileParallelism: false,
     testTimeout: 150_000,
     hookTimeout: 180_000,
+    // A browser under load draws when it likes; what fails three times running is wrong.
+    retry: 2,
     reporters: ['default', 'json'],
     outputFile: { json: '.cache/editor-tests.json' },
   },
